@@ -1,0 +1,339 @@
+/*
+ * folkmote: turnout in a collective action on a listening network.
+ *
+ * This header is the whole contract between the kernel and its callers. It compiles as C99 and as C++.
+ *
+ * THE MODEL IN ONE PARAGRAPH.  Members of a community face an obstacle theta ~ N(mu, 1/alpha). Each member
+ * holds an own signal of precision beta, hears the signals of those it listens to (relay precision gamma),
+ * broadcasts (precision tau) and gatherings (everyone in one hears everyone, exactly), and a private stake
+ * shock of standard deviation sigma. Acting pays benefit * (share of its reach that acts) - cost - (theta +
+ * stake). Members act when their index (pooled estimate + stake shock) is at most a cutoff. The game is
+ * supermodular in cutoffs, so that a least and a greatest equilibrium exist; the kernel encloses both and
+ * says whether they are proved to be one.
+ *
+ * HOW TO USE IT.  Put data into tables, tables into a study, a study with beliefs and a payoff into an
+ * equilibrium; then ask for tables of results:
+ *
+ *     folkmote_table_create -> folkmote_table_add_* -> folkmote_study_create
+ *     folkmote_beliefs_create -> folkmote_beliefs_set;  folkmote_payoff_create -> folkmote_payoff_set
+ *     folkmote_equilibrium_create -> folkmote_equilibrium_table, folkmote_turnout, folkmote_simulate
+ *     folkmote_scenario_create -> folkmote_scenario_<edit> ... -> folkmote_counterfactual
+ *
+ * RULES THAT HOLD FOR EVERY FUNCTION
+ *  - A function that can fail returns a folkmote_status and takes `char *message` last: NULL, or room for
+ *    FOLKMOTE_MESSAGE_BYTES bytes, owned by the caller. On success the message is the empty string; on failure
+ *    one sentence that names what is wrong, where, and what to do.
+ *  - On failure nothing is written to the outputs, except that an output handle is set to NULL.
+ *  - Handles are created here and destroyed by the matching _destroy function; destroying NULL does nothing.
+ *    A handle keeps what it needs of its inputs: inputs may be destroyed, in any order, right after the call.
+ *  - Arrays passed in are read during the call only. Arrays passed out are allocated by the caller.
+ *  - Strings are UTF-8 and end in a zero byte. A returned `const char *` belongs to the library and lives
+ *    as long as the handle it came from (for ever when there is none).
+ *  - No function prints, exits, installs a signal handler, or keeps state between calls apart from a counter
+ *    of live handles. Different handles may be used from different threads; one handle that is being changed
+ *    must not be used by another thread at the same time.
+ *  - Rows and positions count from 0 in this interface; row numbers inside messages count from 1.
+ *
+ * DETERMINISM.  Same library version, inputs and seed give the same bytes for every number of threads, caller
+ * language, compiler and processor. folkmote_stream_version() changes whenever any draw changes.
+ *
+ * STABILITY.  Numbers in the enumerations below are never reused or changed; new ones are appended in gaps.
+ * Functions are never removed or changed within a major version.
+ *
+ * ETHICS.  Listening data describe people who may not have agreed to be in them. Obtain consent and ethics
+ * approval, keep member-level tables private, report by community. Results are no list of whom to press.
+ */
+#ifndef FOLKMOTE_H
+#define FOLKMOTE_H
+
+#include <stddef.h>
+#include <stdint.h>
+
+#if defined(_WIN32)
+#define FOLKMOTE_API
+#elif defined(__GNUC__)
+#define FOLKMOTE_API __attribute__((visibility("default")))
+#else
+#define FOLKMOTE_API
+#endif
+
+#ifdef __cplusplus
+extern "C" {
+#endif
+
+/* ---- Version ------------------------------------------------------------------------------------------ */
+
+#define FOLKMOTE_VERSION "0.1.0"
+#define FOLKMOTE_STREAM_VERSION 1
+#define FOLKMOTE_MESSAGE_BYTES 1024
+
+/* The three constants above as the loaded library has them; a wrapper compares them on load. */
+FOLKMOTE_API const char *folkmote_version(void);
+FOLKMOTE_API int folkmote_stream_version(void);
+FOLKMOTE_API size_t folkmote_message_bytes(void);
+
+/* Handles created and not yet destroyed in this process; for leak tests. */
+FOLKMOTE_API int64_t folkmote_live_handles(void);
+
+/* ---- Status ------------------------------------------------------------------------------------------- */
+
+typedef enum folkmote_status {
+  FOLKMOTE_OK = 0,
+  FOLKMOTE_BAD_ARGUMENT = 1,  /* an argument is NULL, out of range, or of the wrong length */
+  FOLKMOTE_BAD_DATA = 2,      /* a table breaks a rule; the message names table, column, rows and count */
+  FOLKMOTE_OUT_OF_MEMORY = 3, /* nothing was changed; the session goes on */
+  FOLKMOTE_CANCELLED = 4,     /* the progress callback asked to stop */
+  FOLKMOTE_INTERNAL = 9       /* a defect of the library: please report the message */
+} folkmote_status;
+
+/* Name ("FOLKMOTE_BAD_DATA") and plain text of a status; "unknown status" for other numbers. */
+FOLKMOTE_API const char *folkmote_status_name(int status);
+FOLKMOTE_API const char *folkmote_status_text(int status);
+
+/* ---- Tables: every input and every result -------------------------------------------------------------- */
+
+typedef struct folkmote_table folkmote_table;
+
+typedef enum folkmote_type {
+  FOLKMOTE_TEXT = 1,    /* missing: NULL */
+  FOLKMOTE_INTEGER = 2, /* int64_t; missing: INT64_MIN */
+  FOLKMOTE_REAL = 3     /* double; missing: NaN */
+} folkmote_type;
+
+/* An empty table of `rows` >= 0 rows. */
+FOLKMOTE_API folkmote_status folkmote_table_create(int64_t rows, folkmote_table **table, char *message);
+FOLKMOTE_API void folkmote_table_destroy(folkmote_table *table);
+
+/* Add a column called `name` (not yet in the table) with one value per row; the values are copied.
+ * Ids (community, member, listener, speaker, broadcast, gathering) may be of any type: they are matched by
+ * label, so that 7 and "7" are one member; a REAL id must be a whole number of size at most 2^53. */
+FOLKMOTE_API folkmote_status folkmote_table_add_text(folkmote_table *table, const char *name,
+                                                     const char *const *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_table_add_integer(folkmote_table *table, const char *name,
+                                                        const int64_t *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_table_add_real(folkmote_table *table, const char *name,
+                                                     const double *values, char *message);
+
+/* Shape and columns. `column` runs from 0 to columns - 1; outside it, the name is NULL and the type 0. */
+FOLKMOTE_API int64_t folkmote_table_rows(const folkmote_table *table);
+FOLKMOTE_API int64_t folkmote_table_columns(const folkmote_table *table);
+FOLKMOTE_API const char *folkmote_table_column_name(const folkmote_table *table, int64_t column);
+FOLKMOTE_API int folkmote_table_column_type(const folkmote_table *table, int64_t column);
+
+/* Copy one column out. `values` has room for rows elements; the type must be the column's.
+ * Text pointers stay valid until the table is destroyed. */
+FOLKMOTE_API folkmote_status folkmote_table_get_text(const folkmote_table *table, int64_t column,
+                                                     const char **values, char *message);
+FOLKMOTE_API folkmote_status folkmote_table_get_integer(const folkmote_table *table, int64_t column,
+                                                        int64_t *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_table_get_real(const folkmote_table *table, int64_t column, double *values,
+                                                     char *message);
+
+/* 64-bit digest of names, types and values (FNV-1a over a canonical little-endian form), equal in every
+ * language and on every machine for equal tables. NULL gives 0. */
+FOLKMOTE_API uint64_t folkmote_table_digest(const folkmote_table *table);
+
+/* ---- Study: who listens to whom ------------------------------------------------------------------------ */
+
+typedef struct folkmote_study folkmote_study;
+
+/* Check the tables and index them. `links`, `broadcasts`, `gatherings` and `communities` may be NULL.
+ *   members      community, member (unique in its community); optional turnout (0/1/missing), expected_share
+ *                (0..1/missing), weight (> 0), cost, benefit (>= 0), signal_precision (>= 0), stake_sd (>= 0)
+ *   links        community, listener, speaker; optional relay_precision (> 0, infinite = exact)
+ *   broadcasts   community, broadcast, member, precision (> 0, finite, one value per broadcast)
+ *   gatherings   community, gathering, member
+ *   communities  community (exactly the communities of `members`)
+ * Other columns are ignored. `mutual` non-zero adds the reverse of every link. Communities are numbered
+ * in the order in which `members` first names them.
+ * FOLKMOTE_BAD_DATA with table, column, first rows and count for: unknown member or community, link to oneself,
+ * duplicate link or member (with `mutual`, also a contact listed in both directions), a member of another community,
+ * a missing value where none may be, a value out of range or not finite, a wrong type, an empty community. */
+FOLKMOTE_API folkmote_status folkmote_study_create(const folkmote_table *members, const folkmote_table *links,
+                                                   const folkmote_table *broadcasts,
+                                                   const folkmote_table *gatherings,
+                                                   const folkmote_table *communities, int mutual,
+                                                   folkmote_study **study, char *message);
+FOLKMOTE_API void folkmote_study_destroy(folkmote_study *study);
+
+/* One row per community: community, members, links, broadcasts, gatherings, hears_mean and hears_most (members
+ * heard, gatherings included), turnout_observed (weighted share of those observed; NaN: none), turnout_missing. */
+FOLKMOTE_API folkmote_status folkmote_study_summary(const folkmote_study *study, folkmote_table **table,
+                                                    char *message);
+
+/* ---- Parameters of beliefs and payoff ------------------------------------------------------------------ */
+
+typedef enum folkmote_parameter {
+  FOLKMOTE_PRIOR_MEAN = 1,       /* mu; finite; one, or one per community */
+  FOLKMOTE_PRIOR_PRECISION = 2,  /* alpha > 0; one, or one per community */
+  FOLKMOTE_SIGNAL_PRECISION = 3, /* beta >= 0; one, one per community, or one per member */
+  FOLKMOTE_RELAY_PRECISION = 4,  /* gamma > 0, infinite = exact (default); per member means per listener */
+  FOLKMOTE_STAKE_SD = 5,         /* sigma >= 0; default 0 */
+  FOLKMOTE_BENEFIT = 16,         /* b >= 0; default 1 */
+  FOLKMOTE_COST = 17,            /* c, finite; default 0 */
+  FOLKMOTE_REACH = 18            /* mix in [0, 1]: 0 community (default), 1 contacts; one value */
+} folkmote_parameter;
+
+/* Range of a parameter; `low_open` and `high_open` are 1 where the end itself is not allowed.
+ * FOLKMOTE_BAD_ARGUMENT for an unknown parameter. */
+FOLKMOTE_API folkmote_status folkmote_parameter_bounds(int parameter, double *low, double *high, int *low_open,
+                                                       int *high_open, char *message);
+
+typedef struct folkmote_beliefs folkmote_beliefs;
+
+/* Empty beliefs: prior mean and precision must be set before solving, signal precision too unless `members`
+ * has that column. A member or link column, where present, overrides these values. */
+FOLKMOTE_API folkmote_status folkmote_beliefs_create(folkmote_beliefs **beliefs, char *message);
+FOLKMOTE_API void folkmote_beliefs_destroy(folkmote_beliefs *beliefs);
+
+/* Set a parameter numbered 1 to 5. `count` values: 1, the number of communities (in study order), or the
+ * number of members (in the order of `members`); which one is checked when solving. */
+FOLKMOTE_API folkmote_status folkmote_beliefs_set(folkmote_beliefs *beliefs, int parameter, int64_t count,
+                                                  const double *values, char *message);
+
+typedef struct folkmote_payoff folkmote_payoff;
+
+typedef enum folkmote_payoff_kind {
+  FOLKMOTE_SHARE_PAYOFF = 1 /* b * (share of the reach that acts) - c - (theta + stake) */
+} folkmote_payoff_kind;
+
+FOLKMOTE_API folkmote_status folkmote_payoff_create(int kind, folkmote_payoff **payoff, char *message);
+FOLKMOTE_API void folkmote_payoff_destroy(folkmote_payoff *payoff);
+
+/* Set a parameter numbered 16 to 18; `count` as in folkmote_beliefs_set. */
+FOLKMOTE_API folkmote_status folkmote_payoff_set(folkmote_payoff *payoff, int parameter, int64_t count,
+                                                 const double *values, char *message);
+
+/* ---- Options of a run ---------------------------------------------------------------------------------- */
+
+typedef struct folkmote_options folkmote_options;
+
+typedef enum folkmote_option {
+  FOLKMOTE_TOLERANCE = 32, /* widest enclosure of a cutoff that counts as found; 1e-13..1, default 1e-10 */
+  FOLKMOTE_SWEEPS = 33,    /* cap on best-reply sweeps per end; 1..1e9, default 100000 */
+  FOLKMOTE_THREADS = 34    /* worker threads; 1..1024, default 1; never changes a result */
+} folkmote_option;
+
+FOLKMOTE_API folkmote_status folkmote_options_create(folkmote_options **options, char *message);
+FOLKMOTE_API void folkmote_options_destroy(folkmote_options *options);
+FOLKMOTE_API folkmote_status folkmote_options_set(folkmote_options *options, int option, double value,
+                                                  char *message);
+
+/* Progress and cancel. The callback runs on the thread that called the library, about ten times a second and
+ * at the end, with `done` of `total` units of work and the caller's `user`. Non-zero cancels: the call
+ * returns FOLKMOTE_CANCELLED and makes nothing. It must return normally: no exception, no long jump. */
+typedef int (*folkmote_progress)(int64_t done, int64_t total, void *user);
+FOLKMOTE_API folkmote_status folkmote_options_progress(folkmote_options *options, folkmote_progress callback,
+                                                       void *user, char *message);
+
+/* ---- Equilibrium --------------------------------------------------------------------------------------- */
+
+typedef struct folkmote_equilibrium folkmote_equilibrium;
+
+typedef enum folkmote_level { FOLKMOTE_BY_COMMUNITY = 1, FOLKMOTE_BY_MEMBER = 2 } folkmote_level;
+
+/* Enclose the least and the greatest cutoff equilibrium of every community (monotone best replies from both
+ * ends; Milgrom & Roberts 1990, Vives 1990, Van Zandt & Vives 2007). `options` may be NULL: the defaults. */
+FOLKMOTE_API folkmote_status folkmote_equilibrium_create(const folkmote_study *study,
+                                                         const folkmote_beliefs *beliefs,
+                                                         const folkmote_payoff *payoff,
+                                                         const folkmote_options *options,
+                                                         folkmote_equilibrium **equilibrium, char *message);
+FOLKMOTE_API void folkmote_equilibrium_destroy(folkmote_equilibrium *equilibrium);
+
+/* BY_COMMUNITY: community, verdict, contraction_bound, turnout_least, turnout_greatest, width, iterations.
+ * BY_MEMBER, in the order of `members`: community, member, cutoff_least, cutoff_greatest, chance_least,
+ * chance_greatest (chance of acting before anything is known).
+ * Verdicts: "proved unique" (contraction_bound < 1), "bracketed" (both ends agree within the tolerance, not
+ * proved), "several" (the ends are proved to differ), "not converged" (width tells the enclosure reached). */
+FOLKMOTE_API folkmote_status folkmote_equilibrium_table(const folkmote_equilibrium *equilibrium, int level,
+                                                        folkmote_table **table, char *message);
+
+/* Digest of everything the equilibrium was solved from: study, beliefs, payoff, tolerance, sweeps. */
+FOLKMOTE_API uint64_t folkmote_equilibrium_digest(const folkmote_equilibrium *equilibrium);
+
+/* Analytic turnout. Without `given`: one row per community (and value of `at_least`): community, [at_least,]
+ * turnout_least, turnout_greatest, sd_least, sd_greatest [, chance_least, chance_greatest, chance_method].
+ * With `given_count` values of the obstacle theta: one row per community and theta (and at_least), with the
+ * column given after community. `at_least_count` thresholds in [0, 1] of turnout. chance_method is "exact" (no shared
+ * information, equal weights, at most 500 members) or "normal approximation" (given theta, shared information included). */
+FOLKMOTE_API folkmote_status folkmote_turnout(const folkmote_equilibrium *equilibrium, int64_t given_count,
+                                              const double *given, int64_t at_least_count, const double *at_least,
+                                              const folkmote_options *options, folkmote_table **table,
+                                              char *message);
+
+/* Seeded plays, replications first_draw .. first_draw + draws - 1; any split of the range gives the same rows. `given`:
+ * NULL, or one value of theta. BY_COMMUNITY: community, replication (from 1), obstacle, turnout_least,
+ * turnout_greatest. BY_MEMBER: community, member, replication, index, action_least, action_greatest. */
+FOLKMOTE_API folkmote_status folkmote_simulate(const folkmote_equilibrium *equilibrium, int64_t first_draw,
+                                               int64_t draws, uint64_t seed, const double *given, int level,
+                                               const folkmote_options *options, folkmote_table **table,
+                                               char *message);
+
+/* ---- Scenarios and counterfactuals --------------------------------------------------------------------- */
+
+typedef struct folkmote_scenario folkmote_scenario;
+
+/* A scenario is a list of edits of a study, applied in the order in which they are added. Each edit is checked
+ * against the study as the edits before it left it. */
+FOLKMOTE_API folkmote_status folkmote_scenario_create(const folkmote_study *study, folkmote_scenario **scenario,
+                                                      char *message);
+FOLKMOTE_API void folkmote_scenario_destroy(folkmote_scenario *scenario);
+
+/* Add or cut the links of a table as in folkmote_study_create. Cutting a link that is not there, or adding one that is,
+ * is FOLKMOTE_BAD_DATA. `links` NULL in cut_links cuts every link. */
+FOLKMOTE_API folkmote_status folkmote_scenario_add_links(folkmote_scenario *scenario, const folkmote_table *links,
+                                                         int mutual, char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_cut_links(folkmote_scenario *scenario, const folkmote_table *links,
+                                                         int mutual, char *message);
+
+/* Lose a random `share` in [0, 1] of the contacts of each community: the nearest whole number of them, chosen by the seed.
+ * A contact is a pair with a link in either direction; both directions go together. */
+FOLKMOTE_API folkmote_status folkmote_scenario_thin_links(folkmote_scenario *scenario, double share, uint64_t seed,
+                                                          char *message);
+
+/* One more broadcast per community with the given precision (> 0, finite), or one more gathering. `audience`: NULL for
+ * everyone, or a table with community, or with community and member. */
+FOLKMOTE_API folkmote_status folkmote_scenario_broadcast(folkmote_scenario *scenario,
+                                                         const folkmote_table *audience, double precision,
+                                                         char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_gathering(folkmote_scenario *scenario,
+                                                         const folkmote_table *audience, char *message);
+
+/* Add `by` (finite; in units of the benefit) to the cost of the `audience` (as above). */
+FOLKMOTE_API folkmote_status folkmote_scenario_shift_cost(folkmote_scenario *scenario,
+                                                          const folkmote_table *audience, double by, char *message);
+
+/* Replace a belief parameter (1 to 5), overriding any member or link column of that name. */
+FOLKMOTE_API folkmote_status folkmote_scenario_set_beliefs(folkmote_scenario *scenario, int parameter,
+                                                           int64_t count, const double *values, char *message);
+
+/* Extend hearing to `hops` (1..64) links: original reports are forwarded, each along the most precise path
+ * (relay variances add along it), and nobody is counted twice. A gathering is one exact hop. */
+FOLKMOTE_API folkmote_status folkmote_scenario_forward_reports(folkmote_scenario *scenario, int hops,
+                                                               char *message);
+
+/* The edited study, and a digest of baseline and edits. */
+FOLKMOTE_API folkmote_status folkmote_scenario_study(const folkmote_scenario *scenario, folkmote_study **study,
+                                                     char *message);
+FOLKMOTE_API uint64_t folkmote_scenario_digest(const folkmote_scenario *scenario);
+
+/* Prospective counterfactual: the scenario's equilibrium beside the baseline's, analytic means at both ends and `draws`
+ * (0, or >= 2) seeded plays on common random numbers. The scenario must come from the equilibrium's study.
+ * First row: scope "pooled" (weighted over all members); then one row "community" each:
+ *   scope, community, members, baseline_verdict, scenario_verdict, baseline_least, baseline_greatest,
+ *   scenario_least, scenario_greatest, difference_least, difference_greatest (end against same end), difference_low,
+ *   difference_high (the whole interval over equilibria), simulated_least, simulated_greatest (mean difference in
+ *   the plays), standard_error_least, standard_error_greatest (Monte Carlo), spread_low, spread_high (5 % and 95 %
+ *   points of the difference over plays: lowest of both ends, highest of both). Without draws these are NaN.
+ * The pooled verdict is the weakest one. */
+FOLKMOTE_API folkmote_status folkmote_counterfactual(const folkmote_equilibrium *equilibrium,
+                                                     const folkmote_scenario *scenario, int64_t draws,
+                                                     uint64_t seed, const folkmote_options *options,
+                                                     folkmote_table **table, char *message);
+
+#ifdef __cplusplus
+}
+#endif
+
+#endif /* FOLKMOTE_H */

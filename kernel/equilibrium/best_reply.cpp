@@ -1,0 +1,154 @@
+#include "equilibrium/best_reply.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+
+#include "numerics/normal.hpp"
+#include "numerics/sums.hpp"
+
+namespace folkmote {
+
+namespace {
+
+constexpr double infinity = std::numeric_limits<double>::infinity();
+constexpr double inverse_sqrt_two_pi = 0x1.9884533d43651p-2;
+
+}  // namespace
+
+BestReply::BestReply(const Knowledge& knowledge, const SharedInformation& shared, const Stakes& stakes)
+    : prior_mean_(knowledge.prior_mean) {
+  rows_.reserve(knowledge.size);
+  for (int i = 0; i < knowledge.size; ++i) {
+    ReachRow reach = reach_of(stakes, knowledge, i);
+    Row row{stakes.benefit[i], stakes.cost[i], std::move(reach.member), std::move(reach.weight), {}, {}, false};
+    for (int j : row.member) {
+      const ConditionalLaw law = shared.law(i, j);
+      row.one_less_rho.push_back(law.one_less_rho);
+      row.sd.push_back(law.sd);
+      row.has_step = row.has_step || law.sd == 0.0;
+    }
+    rows_.push_back(std::move(row));
+  }
+  scratch_.resize(knowledge.size);
+  moved_.resize(knowledge.size);
+}
+
+/// z_ij = [ (kappa_j - t) + (1 - rho_ij)(t - mu) ] / s_ij.
+void BestReply::standardise(const Row& row, double t, std::span<const double> cutoffs, std::span<double> z) const {
+  const double above_mean = t - prior_mean_;
+  for (std::size_t k = 0; k < z.size(); ++k) {
+    z[k] = ((cutoffs[row.member[k]] - t) + row.one_less_rho[k] * above_mean) / row.sd[k];
+  }
+}
+
+double BestReply::expected_share(const Row& row, double t, std::span<const double> cutoffs, Limit at_jump) {
+  const std::size_t count = row.member.size();
+  const std::span<double> z(scratch_.data(), count);
+  standardise(row, t, cutoffs, z);
+  if (row.has_step) apply_steps(row, t, cutoffs, at_jump, z);
+  normal_cdf(z, z);
+  return ordered_dot(row.weight, z);
+}
+
+/// No spread: j acts for certain when its cutoff lies above its index, and not at all below.
+void BestReply::apply_steps(const Row& row, double t, std::span<const double> cutoffs, Limit at_jump,
+                            std::span<double> z) const {
+  for (std::size_t k = 0; k < z.size(); ++k) {
+    if (row.sd[k] > 0.0) continue;
+    const double margin = (cutoffs[row.member[k]] - t) + row.one_less_rho[k] * (t - prior_mean_);
+    const bool acts = at_jump == Limit::left ? margin >= 0.0 : margin > 0.0;
+    z[k] = acts ? infinity : -infinity;
+  }
+}
+
+double BestReply::gain(int member, double t, std::span<const double> cutoffs, Limit at_jump) {
+  const Row& row = rows_[member];
+  return row.benefit * expected_share(row, t, cutoffs, at_jump) - row.cost - t;
+}
+
+double BestReply::reply(int member, double from, std::span<const double> cutoffs, Limit at_jump) {
+  double outer = from;
+  double outer_gain = gain(member, outer, cutoffs, at_jump);
+  if (outer_gain == 0.0) return outer;
+  // The slope of the gain is at most -1, so that the root lies between `from` and `from + gain(from)`.
+  double inner = outer + outer_gain;
+  double inner_gain = gain(member, inner, cutoffs, at_jump);
+  const bool from_above = outer_gain < 0.0;
+  const auto on_outer_side = [from_above](double g) { return from_above ? g < 0.0 : g > 0.0; };
+  if (on_outer_side(inner_gain)) return inner;  // by rounding only: the bracket has closed
+  for (int step = 0; std::fabs(outer - inner) > 0.02 * std::fabs(from - inner) && inner_gain != 0.0; ++step) {
+    // False position, aimed a little short of the root so that the outer end moves, then exactly, then a bisection
+    // against one-sided creeping and jumps.
+    const double bisected = 0.5 * (outer + inner);
+    if (bisected == outer || bisected == inner) break;
+    double middle = outer + (inner - outer) * (outer_gain / (outer_gain - inner_gain));
+    if (step % 3 == 0) middle += 0.01 * (outer - middle);
+    if (step % 3 == 2 || middle == outer || middle == inner) middle = bisected;
+    const double middle_gain = gain(member, middle, cutoffs, at_jump);
+    if (on_outer_side(middle_gain)) {
+      outer = middle;
+      outer_gain = middle_gain;
+    } else {
+      inner = middle;
+      inner_gain = middle_gain;
+    }
+  }
+  return inner_gain == 0.0 ? inner : outer;
+}
+
+double BestReply::steepest(int member, std::span<const double> cutoffs, std::span<const double> direction, double step) {
+  const Row& row = rows_[member];
+  if (row.has_step) return infinity;
+  const std::size_t count = row.member.size();
+  const std::span<double> here(scratch_.data(), count);
+  const std::span<double> there(moved_.data(), count);
+  standardise(row, cutoffs[member], cutoffs, here);
+  double sum = 0.0;
+  for (std::size_t k = 0; k < count; ++k) {
+    const double pull = ((1.0 - row.one_less_rho[k]) * direction[member] - direction[row.member[k]]) / row.sd[k];
+    there[k] = here[k] - step * pull;
+    // z moves along a line, so that the density is least at one of its ends, and greatest at 0 if that lies between.
+    const double far = std::max(std::fabs(here[k]), std::fabs(there[k]));
+    const bool crosses = (here[k] < 0.0) != (there[k] < 0.0);
+    const double near = crosses ? 0.0 : std::min(std::fabs(here[k]), std::fabs(there[k]));
+    sum += row.weight[k] * pull * normal_density(pull < 0.0 ? far : near);
+  }
+  return direction[member] + row.benefit * sum;
+}
+
+bool BestReply::derivatives(int member, std::span<const double> cutoffs, std::span<double> out) {
+  const Row& row = rows_[member];
+  if (row.has_step) return false;
+  const std::span<double> z(scratch_.data(), row.member.size());
+  standardise(row, cutoffs[member], cutoffs, z);
+  std::fill(out.begin(), out.end(), 0.0);
+  double own = 0.0;
+  for (std::size_t k = 0; k < z.size(); ++k) {
+    const double pull = row.benefit * row.weight[k] * normal_density(z[k]) / row.sd[k];
+    out[row.member[k]] = pull;
+    own += pull * (1.0 - row.one_less_rho[k]);
+  }
+  out[member] = -1.0 - own;
+  return true;
+}
+
+double BestReply::highest(int member) const {
+  const Row& row = rows_[member];
+  return row.benefit * ordered_sum(row.weight) - row.cost;
+}
+
+double BestReply::contraction_bound() const {
+  double bound = 0.0;
+  for (const Row& row : rows_) {
+    double sum = 0.0;
+    for (std::size_t k = 0; k < row.member.size(); ++k) {
+      if (row.weight[k] > 0.0) sum += row.weight[k] * (row.sd[k] > 0.0 ? row.one_less_rho[k] / row.sd[k] : infinity);
+    }
+    if (row.benefit > 0.0) bound = std::max(bound, row.benefit * sum * inverse_sqrt_two_pi);
+  }
+  // At most a few thousand roundings of 2^-53 each: 1e-12 covers them.
+  return bound * (1.0 + 1e-12);
+}
+
+}  // namespace folkmote

@@ -1,0 +1,59 @@
+#include "equilibrium/enclosure.hpp"
+
+#include <algorithm>
+
+#include "equilibrium/end.hpp"
+
+namespace folkmote {
+
+namespace {
+
+double width_between(const std::vector<double>& least, const std::vector<double>& greatest) {
+  double width = 0.0;
+  for (std::size_t i = 0; i < least.size(); ++i) width = std::max(width, greatest[i] - least[i]);
+  return width;
+}
+
+Verdict decide(double bound, double width, double tolerance, bool both_certified) {
+  if (width <= tolerance) return bound < 1.0 ? Verdict::proved_unique : Verdict::bracketed;
+  // Each end is within a quarter of the tolerance of its equilibrium, so that the two equilibria differ.
+  if (both_certified && bound >= 1.0) return Verdict::several;
+  return Verdict::not_converged;
+}
+
+}  // namespace
+
+const char* verdict_text(Verdict verdict) {
+  switch (verdict) {
+    case Verdict::proved_unique: return "proved unique";
+    case Verdict::bracketed: return "bracketed";
+    case Verdict::several: return "several";
+    default: return "not converged";
+  }
+}
+
+Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop) {
+  End greatest(game, Side::greatest, rule.tolerance);
+  End least(game, Side::least, rule.tolerance);
+  double width = width_between(least.cutoffs(), greatest.cutoffs());
+  while (width > rule.tolerance && !stop.raised()) {
+    bool moved = false;
+    for (End* end : {&greatest, &least}) {
+      if (end->finished() || end->iterations() >= rule.sweeps) continue;
+      end->advance(width);
+      moved = true;
+    }
+    width = width_between(least.cutoffs(), greatest.cutoffs());
+    if (!moved) break;
+  }
+  Enclosure result;
+  result.contraction_bound = game.contraction_bound();
+  result.width = width;
+  result.iterations = std::max(greatest.iterations(), least.iterations());
+  result.verdict = decide(result.contraction_bound, width, rule.tolerance, greatest.certified() && least.certified());
+  result.least = least.cutoffs();
+  result.greatest = greatest.cutoffs();
+  return result;
+}
+
+}  // namespace folkmote

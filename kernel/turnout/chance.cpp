@@ -1,0 +1,104 @@
+#include "turnout/chance.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <vector>
+
+#include "numerics/normal.hpp"
+#include "numerics/quadrature.hpp"
+#include "turnout/moments.hpp"
+
+namespace folkmote {
+
+namespace {
+
+constexpr int exact_limit = 500;
+
+/// P(at least `needed` of independent events happen), one event at a time (Poisson-binomial law; the recursion is
+/// that of Barlow & Heidtmann 1984). Once `needed` have happened the count no longer matters.
+double poisson_binomial_tail(std::span<const double> chance, int needed) {
+  if (needed <= 0) return 1.0;
+  if (needed > static_cast<int>(chance.size())) return 0.0;
+  std::vector<double> count(static_cast<std::size_t>(needed), 0.0);
+  count[0] = 1.0;
+  double reached = 0.0;
+  for (double p : chance) {
+    reached += count[needed - 1] * p;
+    for (int k = needed - 1; k > 0; --k) count[k] = count[k] * (1.0 - p) + count[k - 1] * p;
+    count[0] *= 1.0 - p;
+  }
+  return reached;
+}
+
+/// The smallest number of members whose share is at least the threshold: A >= q in doubles, as a play decides it.
+int members_needed(int size, double threshold) {
+  int needed = static_cast<int>(std::floor(threshold * size));
+  while (needed > 0 && static_cast<double>(needed - 1) / size >= threshold) --needed;
+  while (needed <= size && static_cast<double>(needed) / size < threshold) ++needed;
+  return needed;
+}
+
+/// Integral of f over [low, high] by 10-point Gauss-Legendre panels, halved until both halves agree with the whole.
+template <class F>
+double adaptive_integral(const F& f, const QuadratureRule& rule, double low, double high, double whole, double error,
+                         int depth) {
+  const auto panel = [&](double a, double b) {
+    double sum = 0.0;
+    for (std::size_t k = 0; k < rule.nodes.size(); ++k) {
+      sum += rule.weights[k] * f(0.5 * (a + b) + 0.5 * (b - a) * rule.nodes[k]);
+    }
+    return 0.5 * (b - a) * sum;
+  };
+  const double middle = 0.5 * (low + high);
+  const double left = panel(low, middle);
+  const double right = panel(middle, high);
+  if (depth == 0 || std::fabs(left + right - whole) <= error) return left + right;
+  return adaptive_integral(f, rule, low, middle, left, 0.5 * error, depth - 1) +
+         adaptive_integral(f, rule, middle, high, right, 0.5 * error, depth - 1);
+}
+
+}  // namespace
+
+bool chance_is_exact(const SharedInformation& shared, std::span<const double> weights) {
+  const bool equal = std::all_of(weights.begin(), weights.end(), [&](double w) { return w == weights[0]; });
+  return equal && !shared.any() && weights.size() <= exact_limit;
+}
+
+double chance_at_least_given(const Knowledge& knowledge, const SharedInformation& shared,
+                             std::span<const double> weights, std::span<const double> cutoffs, double threshold,
+                             double obstacle) {
+  if (threshold <= 0.0) return 1.0;
+  if (chance_is_exact(shared, weights)) {
+    return poisson_binomial_tail(chances_given(knowledge, cutoffs, obstacle), members_needed(knowledge.size, threshold));
+  }
+  const Moments moments = turnout_given(knowledge, shared, weights, cutoffs, obstacle);
+  if (moments.sd == 0.0) return moments.mean >= threshold ? 1.0 : 0.0;
+  // With equal weights turnout is a multiple of 1/n: half a member of continuity correction.
+  const bool equal = std::all_of(weights.begin(), weights.end(), [&](double w) { return w == weights[0]; });
+  double bar = threshold;
+  if (equal) bar = (members_needed(knowledge.size, threshold) - 0.5) / knowledge.size;
+  return normal_cdf((moments.mean - bar) / moments.sd);
+}
+
+double chance_at_least(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights,
+                       std::span<const double> cutoffs, double threshold) {
+  if (threshold <= 0.0) return 1.0;
+  const double scale = 1.0 / std::sqrt(knowledge.prior_precision);
+  const auto integrand = [&](double z) {
+    return normal_density(z) * chance_at_least_given(knowledge, shared, weights, cutoffs, threshold,
+                                                     knowledge.prior_mean + scale * z);
+  };
+  const QuadratureRule rule = gauss_legendre(10);
+  constexpr double reach = 8.0;
+  constexpr int panels = 8;
+  double sum = 0.0;
+  for (int k = 0; k < panels; ++k) {
+    const double low = -reach + 2.0 * reach * k / panels;
+    const double high = -reach + 2.0 * reach * (k + 1) / panels;
+    // A first guess that no panel can meet by chance: every panel is halved at least once.
+    sum += adaptive_integral(integrand, rule, low, high, -1.0, 1e-9 / panels, 12);
+  }
+  return std::min(1.0, sum);
+}
+
+}  // namespace folkmote
