@@ -22,7 +22,10 @@ folkmote_status folkmote_parameter_bounds(int parameter, double* low, double* hi
   return guard(message, [&] {
     const folkmote::ParameterRule& rule = folkmote::parameter_rule(parameter);
     // All are checked before any is written: a failure leaves every output as it was.
-    needed(low, "low"), needed(high, "high"), needed(low_open, "low_open"), needed(high_open, "high_open");
+    needed(low, "low");
+    needed(high, "high");
+    needed(low_open, "low_open");
+    needed(high_open, "high_open");
     *low = rule.low;
     *high = rule.high;
     *low_open = rule.low_open;

@@ -50,13 +50,16 @@ copy_headers() {
 check_includes() {
   local foreign
   foreign=$(grep -rhoE '^ *# *include *[<"](Eigen|boost|unsupported)/[^>"]+' "$src/kernel" "$src/capi" || true)
-  [ -z "$foreign" ] || { echo "bundle: the kernel includes headers that are not bundled:" >&2; echo "$foreign" | sort -u >&2; exit 1; }
+  [ -z "$foreign" ] && return
+  echo "bundle: the kernel includes headers that are not bundled:" >&2
+  echo "$foreign" | sort -u >&2
+  exit 1
 }
 
 write_makevars() {
   {
     echo 'CXX_STD = CXX20'
-    echo 'PKG_CPPFLAGS = -Icapi/include -Ikernel -Iinclude'
+    echo 'PKG_CPPFLAGS = -Icapi/include -Ikernel -isystem include'
     echo 'PKG_CFLAGS = $(C_VISIBILITY)'
     echo 'PKG_CXXFLAGS = $(CXX_VISIBILITY) -pthread'
     echo 'PKG_LIBS = -pthread'
@@ -75,6 +78,9 @@ check_includes
 write_makevars
 
 mkdir -p "$out"
-(cd "$stage" && R CMD build --no-manual --no-build-vignettes folkmote >"$stage/log" 2>&1) || { cat "$stage/log" >&2; exit 1; }
+if ! (cd "$stage" && R CMD build --no-manual --no-build-vignettes folkmote) >"$stage/log" 2>&1; then
+  cat "$stage/log" >&2
+  exit 1
+fi
 mv "$stage"/folkmote_*.tar.gz "$out"/
 echo "$out/$(ls -t "$out" | grep '^folkmote_.*\.tar\.gz$' | head -n 1)"

@@ -105,7 +105,7 @@ static int print_answer(const folkmote_table *table, int question) {
   return bad;
 }
 
-/* One cell per line of `cells`: text as it is, numbers so that reading them back gives the same bits. */
+/* All digits: reading the number back gives the same bits. */
 static void write_real(FILE *file, double value) {
   if (isnan(value)) fputs("NaN", file);
   else if (isinf(value)) fputs(value > 0 ? "Inf" : "-Inf", file);
@@ -120,7 +120,8 @@ static int get_column(const folkmote_table *table, int64_t c, void *values) {
   }
 }
 
-static int write_rows(FILE *file, const folkmote_table *table, int question) {
+/* The rows of a table, each after a label; the header comes first when it is asked for. */
+static int write_rows(FILE *file, const folkmote_table *table, const char *label, int header) {
   enum { MOST = 64 };
   union { const char **text; int64_t *whole; double *real; void *any; } column[MOST];
   const int64_t rows = folkmote_table_rows(table), columns = folkmote_table_columns(table);
@@ -130,13 +131,13 @@ static int write_rows(FILE *file, const folkmote_table *table, int question) {
     column[got].any = calloc((size_t)rows + 1, 8);
     bad = !column[got].any || get_column(table, got, column[got].any);
   }
-  if (!bad && question == 0) {
+  if (!bad && header) {
     fputs("question", file);
     for (int64_t c = 0; c < columns; ++c) fprintf(file, ",%s", folkmote_table_column_name(table, c));
     fputc('\n', file);
   }
   for (int64_t r = 0; r < rows && !bad; ++r) {
-    fputs(question_names[question], file);
+    fputs(label, file);
     for (int64_t c = 0; c < columns; ++c) {
       const int type = folkmote_table_column_type(table, c);
       fputc(',', file);
@@ -164,7 +165,7 @@ static int ask(const folkmote_study *study, const folkmote_equilibrium *equilibr
                int question, folkmote_table **answer) {
   folkmote_scenario *scenario = NULL;
   int bad = failed(folkmote_scenario_create(study, &scenario, message), "scenario") || edit(scenario, question) ||
-            failed(folkmote_counterfactual(equilibrium, scenario, DRAWS, SEED, options, answer, message), "counterfactual");
+            failed(folkmote_counterfactual(equilibrium, scenario, DRAWS, SEED, options, answer, message), "answer");
   folkmote_scenario_destroy(scenario);
   return bad;
 }
@@ -192,7 +193,7 @@ static int report(folkmote_table *const *answers, const folkmote_equilibrium *eq
 static int write_results(const char *path, folkmote_table *const *answers) {
   FILE *file = fopen(path, "wb");
   int bad = !file;
-  for (int q = 0; q < QUESTIONS && !bad; ++q) bad = write_rows(file, answers[q], q);
+  for (int q = 0; q < QUESTIONS && !bad; ++q) bad = write_rows(file, answers[q], question_names[q], q == 0);
   if (file && (ferror(file) | fclose(file))) bad = 1;
   if (bad) fprintf(stderr, "holdout: %s was not written\n", path);
   return bad;

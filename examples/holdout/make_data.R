@@ -21,15 +21,15 @@ phone_precision <- 2
 radio_precision <- 1.5
 
 # The beliefs that the study was made with; holdout.R, holdout.c and holdout.ipynb use the same.
-growers_believe <- beliefs(prior_mean = 0.36, prior_precision = 6.2, signal_precision = 1, stake_sd = 0.15)
+growers_believe <- list(prior_mean = 0.36, prior_precision = 6.2, signal_precision = 1, stake_sd = 0.15)
 
 RNGkind("Mersenne-Twister", "Inversion", "Rejection")
 set.seed(world_seed)
 
 one_of <- function(x, size, prob = NULL) x[sample.int(length(x), size, prob = prob)]
 
-# Contacts of one village as pairs of growers: kin in small households-of-households, and phone contacts where
-# newcomers ring those who are rung already (preferential attachment).
+# Contacts of one village as pairs of growers: kin groups of one to four, and phone contacts where newcomers ring
+# those who are rung already (preferential attachment).
 kin_pairs <- function(n) {
   group <- rep(seq_len(n), sample(1:4, n, replace = TRUE, prob = c(0.35, 0.35, 0.2, 0.1)))[seq_len(n)]
   group <- group[sample.int(n)]
@@ -109,7 +109,7 @@ for (v in seq_len(villages)) {
 
 # One play: each village meets one drawn obstacle, and every grower acts on the index that it then holds.
 st <- study(members, links, broadcasts, gatherings, communities)
-eq <- equilibrium(st, growers_believe)
+eq <- equilibrium(st, do.call(beliefs, growers_believe))
 play <- as.data.frame(simulate(eq, nsim = 1, seed = play_seed, level = "member"))
 stopifnot(identical(play$member, members$member))
 members$turnout <- play$action_greatest

@@ -1,6 +1,7 @@
 #include "equilibrium/enclosure.hpp"
 
 #include <algorithm>
+#include <cmath>
 
 #include "equilibrium/end.hpp"
 
@@ -21,6 +22,15 @@ Verdict decide(double bound, double width, double tolerance, bool both_certified
   return Verdict::not_converged;
 }
 
+/// Cutoffs of size x cannot be told apart below a few roundings of x.
+double attainable(const BestReply& game, double tolerance) {
+  double scale = 0.0;
+  for (int i = 0; i < game.size(); ++i) {
+    scale = std::max({scale, std::fabs(game.lowest(i)), std::fabs(game.highest(i))});
+  }
+  return std::max(tolerance, 64.0 * 0x1p-52 * scale);
+}
+
 }  // namespace
 
 const char* verdict_text(Verdict verdict) {
@@ -33,10 +43,11 @@ const char* verdict_text(Verdict verdict) {
 }
 
 Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop) {
-  End greatest(game, Side::greatest, rule.tolerance);
-  End least(game, Side::least, rule.tolerance);
+  const double tolerance = attainable(game, rule.tolerance);
+  End greatest(game, Side::greatest, tolerance);
+  End least(game, Side::least, tolerance);
   double width = width_between(least.cutoffs(), greatest.cutoffs());
-  while (width > rule.tolerance && !stop.raised()) {
+  while (width > tolerance && !stop.raised()) {
     bool moved = false;
     for (End* end : {&greatest, &least}) {
       if (end->finished() || end->iterations() >= rule.sweeps) continue;
@@ -50,7 +61,7 @@ Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop) 
   result.contraction_bound = game.contraction_bound();
   result.width = width;
   result.iterations = std::max(greatest.iterations(), least.iterations());
-  result.verdict = decide(result.contraction_bound, width, rule.tolerance, greatest.certified() && least.certified());
+  result.verdict = decide(result.contraction_bound, width, tolerance, greatest.certified() && least.certified());
   result.least = least.cutoffs();
   result.greatest = greatest.cutoffs();
   return result;

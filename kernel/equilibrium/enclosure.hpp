@@ -16,19 +16,20 @@ enum class Verdict { proved_unique, bracketed, several, not_converged };
 const char* verdict_text(Verdict verdict);
 
 struct SolveRule {
-  double tolerance = 1e-10;    // widest enclosure of a cutoff that counts as found
-  std::int64_t sweeps = 100000;  // cap for each end
+  double tolerance = 1e-10;      // widest enclosure of a cutoff that counts as found
+  std::int64_t sweeps = 100000;  // cap on sweeps and leaps of each end
 };
 
 /// Every cutoff equilibrium lies between `least` and `greatest`. Unless the verdict is "not converged", each of the
-/// two is within half the tolerance of the extremal equilibrium that it bounds.
+/// two is within a quarter of the tolerance of the extremal equilibrium that it bounds, or the whole enclosure is narrower
+/// than the tolerance (64 roundings of the largest cutoff, where that is wider).
 struct Enclosure {
   std::vector<double> least;
   std::vector<double> greatest;
   Verdict verdict = Verdict::not_converged;
   double contraction_bound = 0.0;
   double width = 0.0;          // max_i greatest_i - least_i
-  std::int64_t iterations = 0;  // sweeps of the end that took more
+  std::int64_t iterations = 0;  // sweeps and leaps of the end that took more
 };
 
 Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop);

@@ -14,7 +14,8 @@ namespace folkmote {
 double binormal_cdf(double h, double k, double rho);
 
 // Cov(1{X <= h}, 1{Y <= k}) = binormal_cdf(h, k, rho) - Phi(h) Phi(k). For |rho| <= 0.8 it is integrated directly: no
-// cancellation (relative error below 1e-11 for |h|, |k| <= 4), the sign of rho, and half the time; beyond, the difference.
+// cancellation (relative error below 1e-11 for |h|, |k| <= 4), the sign of rho, and half the time; beyond, the
+// difference.
 double binormal_covariance(double h, double k, double rho);
 
 // The density at (h, k) for |rho| < 1.
@@ -23,9 +24,9 @@ double binormal_density(double h, double k, double rho);
 // The partial derivatives of binormal_cdf for |rho| < 1 (Plackett 1954, Biometrika 41:351-360):
 //   dh = phi(h) Phi((k - rho h)/s), dk likewise, s = sqrt(1 - rho^2), and drho = the density.
 struct BinormalGradient {
-    double dh;
-    double dk;
-    double drho;
+  double dh;
+  double dk;
+  double drho;
 };
 BinormalGradient binormal_gradient(double h, double k, double rho);
 

@@ -13,9 +13,9 @@ namespace folkmote {
 
 double normal_density(double x);
 double normal_cdf(double x);
-double normal_upper(double x);     // 1 - normal_cdf(x) without cancellation
-double log_normal_cdf(double x);   // finite down to x = -1.3e154
-double normal_mills(double x);     // density(x) / cdf(x), the derivative of log_normal_cdf
+double normal_upper(double x);    // 1 - normal_cdf(x) without cancellation
+double log_normal_cdf(double x);  // finite down to x = -1.3e154
+double normal_mills(double x);    // density(x) / cdf(x), the derivative of log_normal_cdf
 
 // Inverse of normal_cdf: 0 gives -inf, 1 gives +inf, anything outside [0, 1] and NaN give NaN.
 double normal_quantile(double p);

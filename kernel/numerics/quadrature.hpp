@@ -9,8 +9,8 @@
 namespace folkmote {
 
 struct QuadratureRule {
-    std::vector<double> nodes;    // ascending, symmetric about 0 to the bit
-    std::vector<double> weights;
+  std::vector<double> nodes;  // ascending, symmetric about 0 to the bit
+  std::vector<double> weights;
 };
 
 // Integral of f over [-1, 1] = sum of weights * f(nodes), exact for polynomials of degree 2n - 1.

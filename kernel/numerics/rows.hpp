@@ -11,14 +11,14 @@ namespace folkmote {
 // constant is added last, so that the result carries little more than the two roundings of c0 and of that sum.
 template <std::size_t n>
 inline double row_value(const double (&c)[n], double t) {
-    static_assert(n >= 6 && n % 2 == 0);
-    const double s = t * t;
-    double even = c[n - 2], odd = c[n - 1];
-    for (std::size_t j = n - 2; j > 2; j -= 2) {
-        even = even * s + c[j - 2];
-        odd = odd * s + c[j - 1];
-    }
-    return c[0] + (even * s + t * (c[1] + odd * s));
+  static_assert(n >= 6 && n % 2 == 0);
+  const double s = t * t;
+  double even = c[n - 2], odd = c[n - 1];
+  for (std::size_t j = n - 2; j > 2; j -= 2) {
+    even = even * s + c[j - 2];
+    odd = odd * s + c[j - 1];
+  }
+  return c[0] + (even * s + t * (c[1] + odd * s));
 }
 
 }  // namespace folkmote

@@ -53,7 +53,7 @@ Moments moments_of(std::span<const double> weights, std::vector<double> z, const
     double pairs = 0.0;
     for (std::size_t j = i + 1; j < n; ++j) {
       const double r = correlation(static_cast<int>(i), static_cast<int>(j));
-      if (r != 0.0) pairs += weights[j] * (binormal_cdf(z[i], z[j], r) - chance[i] * chance[j]);
+      if (r != 0.0) pairs += weights[j] * binormal_covariance(z[i], z[j], r);
     }
     rows[i] = weights[i] * (weights[i] * chance[i] * (1.0 - chance[i]) + 2.0 * pairs);
   }

@@ -121,7 +121,24 @@ static void test_values_are_copied(void) {
   folkmote_table_destroy(table);
 }
 
+/* "A returned `const char *` lives as long as the handle it came from": adding columns must not move names or texts. */
+static void test_strings_stay(void) {
+  folkmote_table *table = TABLE("a:t short");
+  const char *const name = folkmote_table_column_name(table, 0);
+  const char *const text = text_at(table, "a", 0);
+  const double value = 1;
+  char more[16];
+  for (int k = 0; k < 100; ++k) {
+    snprintf(more, sizeof more, "b%d", k);
+    folkmote_table_add_real(table, more, &value, NULL);
+  }
+  CHECK(folkmote_table_column_name(table, 0) == name);
+  CHECK(text_at(table, "a", 0) == text);
+  folkmote_table_destroy(table);
+}
+
 void test_tables(void) {
+  test_strings_stay();
   test_round_trip();
   test_wrong_column();
   test_names();

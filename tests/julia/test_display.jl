@@ -51,8 +51,13 @@ end
 @test occursin("none used", string(provenance(eq))) && string(provenance(st)) == text(provenance(st))
 
 # Every exported name is documented, with an example.
-for name in vcat(filter(!=(:Folkmote), names(Folkmote)))
-    documentation = string(Base.Docs.doc(Base.Docs.Binding(Folkmote, name)))
-    @test occursin("# Example", documentation) || occursin("Example", documentation) || string(name, " lacks an example")
+function documentation(binding)
+    found = get(Base.Docs.meta(Folkmote), binding, nothing)
+    return found === nothing ? "" : join(join(part.text) for part in values(found.docs))
 end
-@test occursin("ethics", string(Base.Docs.doc(Base.Docs.Binding(Folkmote, :Folkmote))))
+of(name, home = Folkmote) = documentation(Base.Docs.Binding(home, name))
+@test filter(name -> !occursin("# Example", of(name)), filter(!=(:Folkmote), names(Folkmote))) == []
+@test occursin("# Example", of(:broadcast, Base)) && occursin("jobs", of(:build))
+for caution in ("ethics approval and consent", "private", "never a\n  list of whom to press", "crowd-safety", "Local law", "acts on one number")
+    @test occursin(caution, of(:Folkmote))
+end

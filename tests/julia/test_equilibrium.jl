@@ -21,7 +21,7 @@ for (k, found) in enumerate(roots)
     @test (solved.verdict[k] === :several) == (length(found) > 1)
     @test abs(cutoffs.cutoff_least[2k-1] - least) < 1e-10
 end
-@test count(==(Symbol("not converged")), solved.verdict) <= 6 # the critical points, and the most precise signals
+@test count(==(Symbol("not converged")), solved.verdict) <= 2 # at the critical point itself
 @test all(solved.contraction_bound[k] < 1 for k in eachindex(roots) if solved.verdict[k] === Symbol("proved unique"))
 
 # Too few sweeps are no answer.

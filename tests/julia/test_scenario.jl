@@ -46,6 +46,11 @@ cf = counterfactual(eq, scenario(st, shift_cost(-0.2)); draws = 200, seed = 7)
 @test all(isnan, counterfactual(eq, scenario(st); draws = 0).simulated_least)
 @test all(abs.(counterfactual(eq, scenario(st); draws = 10, seed = 3).simulated_least) .== 0) # common random numbers
 
+# Symbols for communities come back as symbols, and the pooled row has none.
+symbols = study((community = [:a, :a, :b, :b], member = ['x', 'y', 'x', 'y']))
+pooled = counterfactual(equilibrium(symbols, b), scenario(symbols, gathering()); draws = 0)
+@test isequal(pooled.community, [missing, :a, :b])
+
 other = small_study()
 @test refused(() -> counterfactual(eq, scenario(other)), :FOLKMOTE_BAD_ARGUMENT, "study")
 @test refused(() -> counterfactual(eq, scenario(st); draws = 1), :FOLKMOTE_BAD_ARGUMENT)

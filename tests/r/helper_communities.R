@@ -64,7 +64,8 @@ community_equilibrium <- function(part, st = community_study(part), ...) {
 }
 
 # A small study without surprises, to see that the session goes on.
-good_members <- function() data.frame(community = rep(c("A", "B"), c(4, 3)), member = c(1:4, 1:3), turnout = c(1, 0, NA, 1, 0, 0, 1))
+good_members <- function() data.frame(community = rep(c("A", "B"), c(4, 3)), member = c(1:4, 1:3),
+  turnout = c(1, 0, NA, 1, 0, 0, 1))
 good_links <- function() data.frame(community = c("A", "A", "B"), listener = c(1, 2, 1), speaker = c(2, 3, 3))
 good_study <- function() study(good_members(), good_links(), mutual = TRUE)
 good_beliefs <- function() beliefs(prior_mean = 0.4, prior_precision = 1, signal_precision = 4, stake_sd = 0.2)

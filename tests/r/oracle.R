@@ -1,8 +1,8 @@
 # An independent, dense solution of the model of one community, written from its definition and not from the kernel:
 # what members know comes from the joint normal law of every report, best replies from uniroot().
 #
-# A community is a list: mu, alpha, and per member beta, sigma, weight, benefit, cost; exact (logical matrix, [i, j]: i
-# hears j exactly), relay (matrix, [i, j]: precision of the link by which i hears j, NA where there is none),
+# A community is a list: mu, alpha, and per member beta, sigma, weight, benefit, cost; exact (logical matrix,
+# [i, j]: i hears j exactly), relay (matrix, [i, j]: precision of the link by which i hears j, NA where there is none),
 # broadcasts (list of list(precision, audience)), reach (0 community .. 1 contacts).
 
 # Every random quantity is independent; reports are sums of them. Returns loadings of the posterior means.

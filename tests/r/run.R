@@ -2,7 +2,8 @@
 # Usage: Rscript tests/r/run.R [pattern]
 # The last line is "R: N passed, N failed", counted in expectations.
 
-argument <- function(name) sub(paste0("^--", name, "="), "", grep(paste0("^--", name, "="), commandArgs(), value = TRUE))
+argument <- function(name) sub(paste0("^--", name, "="), "",
+  grep(paste0("^--", name, "="), commandArgs(), value = TRUE))
 tests <- dirname(normalizePath(argument("file")))
 library_folder <- Sys.getenv("FOLKMOTE_R_LIBRARY")
 if (nzchar(library_folder)) .libPaths(c(normalizePath(library_folder, mustWork = TRUE), .libPaths()))

@@ -8,7 +8,8 @@ ids_of <- function(ids, community = rep("A", length(ids)), links = NULL) {
 
 test_that("every type of id comes back as it was", {
   kinds <- list(
-    integer = c(5L, 3L, 100000L), double = c(100000, 2^53, 7), text = c("b", "a", "1e5"), unicode = c("Jos\u00e9", "\u0416", "z"),
+    integer = c(5L, 3L, 100000L), double = c(100000, 2^53, 7), text = c("b", "a", "1e5"), unicode = c("Jos\u00e9",
+      "\u0416", "z"),
     factor = factor(c("b", "a", "c"), levels = c("c", "unused", "b", "a")), large = c(-2147483647L, 2147483647L, 0L)
   )
   for (kind in names(kinds)) expect_identical(ids_of(kinds[[kind]])$member, kinds[[kind]], label = kind)
@@ -25,15 +26,20 @@ test_that("latin1 text is the same label as UTF-8", {
 })
 
 test_that("labels match over types", {
-  links <- data.frame(community = factor("A"), listener = c("100000", "7"), speaker = factor(c("7", "9007199254740992")))
+  links <- data.frame(community = factor("A"), listener = c("100000", "7"),
+    speaker = factor(c("7", "9007199254740992")))
   text <- ids_of(c(100000, 7, 2^53), links = links)
-  numbers <- ids_of(c(100000, 7, 2^53), links = data.frame(community = "A", listener = c(100000, 7), speaker = c(7, 2^53)))
+  numbers <- ids_of(c(100000, 7, 2^53),
+    links = data.frame(community = "A", listener = c(100000, 7), speaker = c(7, 2^53)))
   expect_identical(text, numbers)
   expect_identical(ids_of(c("100000", "7", "9007199254740992"), links = links)[-2], numbers[-2])
 })
 
+label_pairs <- function(x) paste(x$community, x$member)
+
 test_that("interleaved rows keep their order", {
-  members <- data.frame(community = rep(c("B", "A"), 4), member = c(4, 1, 3, 2, 2, 3, 1, 4), cost = seq(0, 0.35, 0.05))
+  members <- data.frame(community = rep(c("B", "A"), 4), member = c(4, 1, 3, 2, 2, 3, 1, 4),
+    cost = seq(0, 0.35, 0.05))
   links <- data.frame(community = c("A", "B"), listener = c(4, 1), speaker = c(2, 3))
   eq <- equilibrium(study(members, links), good_beliefs())
   by_member <- as.data.frame(eq, level = "member")
@@ -45,12 +51,11 @@ test_that("interleaved rows keep their order", {
   plays <- as.data.frame(simulate(eq, 2, seed = 1, level = "member"))
   expect_true(all(label_pairs(plays) %in% label_pairs(members)))
 })
-label_pairs <- function(x) paste(x$community, x$member)
 
 test_that("no id is written with an exponent", {
   st <- study(data.frame(community = 100000, member = c(100000, 200000, 3e6)))
   eq <- equilibrium(st, good_beliefs())
-  text <- capture.output(print(eq), print(as.data.frame(st)), print(turnout(eq)), print(scenario(st, thin_links(0, seed = 1e5))))
+  text <- capture.output(print(eq), print(st), print(turnout(eq)), print(scenario(st, thin_links(0, seed = 1e5))))
   expect_false(any(grepl("e+", text, fixed = TRUE)))
   expect_match(paste(text, collapse = " "), "100000", fixed = TRUE)
 })

@@ -33,7 +33,8 @@ test_that("unknown members and communities", {
   refuses(links_with("speaker", c(1, 3), 9), "links", "'speaker'", "rows 1 and 3", "(2 rows)", "unknown member")
   refuses(links_with("listener", 2, 9), "links", "'listener'", "row 2", "(1 row)")
   refuses(links_with("community", 2, "Z"), "links", "'community'", "row 2", "(1 row)")
-  refuses(study(good_members(), NULL, with_value(radio(), "member", 2, 9)), "broadcasts", "'member'", "row 2", "(1 row)")
+  refuses(study(good_members(), NULL, with_value(radio(), "member", 2, 9)), "broadcasts", "'member'", "row 2",
+    "(1 row)")
   refuses(study(good_members(), gatherings = with_value(hall(), "member", 3, 9)), "gatherings", "'member'", "row 3")
 })
 
@@ -59,15 +60,19 @@ test_that("links across communities", {
 })
 
 test_that("NA where none may be", {
-  for (column in c("community", "member")) refuses(members_with(column, 6, NA), "members", paste0("'", column, "'"), "row 6", "(1 row)", "missing")
+  for (column in c("community", "member")) refuses(members_with(column, 6, NA), "members", paste0("'", column, "'"),
+    "row 6", "(1 row)", "missing")
   for (column in c("weight", "cost", "benefit", "signal_precision", "stake_sd")) {
-    refuses(members_with(column, c(2, 5), NA), "members", paste0("'", column, "'"), "rows 2 and 5", "(2 rows)", "missing")
+    refuses(members_with(column, c(2, 5), NA), "members", paste0("'", column, "'"), "rows 2 and 5", "(2 rows)",
+      "missing")
   }
   for (column in c("community", "listener", "speaker", "relay_precision")) {
     refuses(links_with(column, 3, NA), "links", paste0("'", column, "'"), "row 3", "(1 row)", "missing")
   }
-  refuses(study(good_members(), NULL, with_value(radio(), "precision", 1:3, NA)), "broadcasts", "'precision'", "rows 1, 2 and 3", "missing")
-  refuses(study(good_members(), communities = data.frame(community = c("A", NA, "B"))), "communities", "'community'", "row 2", "missing")
+  refuses(study(good_members(), NULL, with_value(radio(), "precision", 1:3, NA)), "broadcasts", "'precision'",
+    "rows 1, 2 and 3", "missing")
+  refuses(study(good_members(), communities = data.frame(community = c("A", NA, "B"))), "communities", "'community'",
+    "row 2", "missing")
   expect_s3_class(members_with("turnout", 1:7, NA), "folkmote_study")
   expect_s3_class(members_with("expected_share", 1:7, NA_real_), "folkmote_study")
   covariate <- good_members()
@@ -83,7 +88,8 @@ test_that("weights and precisions that are not positive", {
   refuses(members_with("stake_sd", 4, -1), "members", "'stake_sd'", "row 4", "(1 row)")
   refuses(members_with("benefit", 4, -1), "members", "'benefit'", "row 4", "(1 row)")
   refuses(links_with("relay_precision", 2, 0), "links", "'relay_precision'", "row 2", "(1 row)")
-  refuses(study(good_members(), NULL, with_value(radio(), "precision", 1:3, 0)), "broadcasts", "'precision'", "(3 rows)")
+  refuses(study(good_members(), NULL, with_value(radio(), "precision", 1:3, 0)), "broadcasts", "'precision'",
+    "(3 rows)")
   expect_s3_class(members_with("signal_precision", 4, 0), "folkmote_study")
   expect_s3_class(links_with("relay_precision", 2, Inf), "folkmote_study")
 })
@@ -94,18 +100,21 @@ test_that("values that are not finite, or out of range", {
     refuses(members_with(column, 7, -Inf), "members", paste0("'", column, "'"), "row 7", "(1 row)")
     refuses(members_with(column, 7, NaN), "members", paste0("'", column, "'"), "row 7", "(1 row)")
   }
-  refuses(study(good_members(), NULL, with_value(radio(), "precision", 1:3, Inf)), "broadcasts", "'precision'", "finite")
+  refuses(study(good_members(), NULL, with_value(radio(), "precision", 1:3, Inf)), "broadcasts", "'precision'",
+    "finite")
   refuses(members_with("expected_share", 2, 1.2), "members", "'expected_share'", "row 2", "(1 row)")
   refuses(members_with("member", 2, 1.5), "members", "'member'", "row 2", "whole")
   refuses(members_with("member", 2, 2^54), "members", "'member'", "row 2", "2^53")
 })
 
 test_that("turnout that is not binary", {
-  refuses(members_with("turnout", 1:6, c(2, -1, 0.5, 3, 4, 5)), "members", "'turnout'", "rows 1, 2, 3, 4, 5", "...", "(6 rows)")
+  refuses(members_with("turnout", 1:6, c(2, -1, 0.5, 3, 4, 5)), "members", "'turnout'", "rows 1, 2, 3, 4, 5", "...",
+    "(6 rows)")
 })
 
 test_that("wrong types", {
-  refuses(members_with("turnout", 1:7, as.character(rep(0:1, length.out = 7))), "members", "'turnout'", "7 rows", "numeric")
+  refuses(members_with("turnout", 1:7, as.character(rep(0:1, length.out = 7))), "members", "'turnout'", "7 rows",
+    "numeric")
   refuses(study(transform(good_members(), turnout = factor(turnout))), "members", "'turnout'", "7 rows")
   members <- good_members()
   members$weight <- as.list(1:7)
@@ -116,15 +125,19 @@ test_that("wrong types", {
   refuses(study(members), "members", "'weight'", "7 rows")
   broken <- good_members()
   broken$community[2] <- "\xff"
+  Encoding(broken$community) <- "UTF-8"
   refuses(study(broken), "members", "'community'", "row 2", "(1 row)", "encoding")
 })
 
 test_that("empty communities, missing columns and tables", {
-  refuses(study(good_members(), communities = data.frame(community = c("A", "B", "C", "D"))), "communities", "'community'", "rows 3 and 4", "(2 rows)")
+  refuses(study(good_members(), communities = data.frame(community = c("A", "B", "C", "D"))), "communities",
+    "'community'", "rows 3 and 4", "(2 rows)")
   refuses(study(good_members(), communities = data.frame(community = "A")), "communities", "'community'")
   refuses(study(good_members()[0, ]), "members")
-  for (column in c("community", "member")) refuses(study(good_members()[setdiff(names(good_members()), column)]), "members", column, "missing")
-  for (column in c("community", "listener", "speaker")) refuses(study(good_members(), good_links()[setdiff(names(good_links()), column)]), "links", column, "missing")
+  for (column in c("community", "member")) refuses(study(good_members()[setdiff(names(good_members()), column)]),
+    "members", column, "missing")
+  for (column in c("community", "listener", "speaker")) refuses(study(good_members(),
+    good_links()[setdiff(names(good_links()), column)]), "links", column, "missing")
   refuses(study(good_members(), NULL, radio()[1:3]), "broadcasts", "'precision'", "missing")
   refuses(study(good_members(), NULL, with_value(radio(), "precision", 2, 3)), "broadcasts", "'precision'", "row 2")
   doubled <- cbind(good_members(), member = 1:7)

@@ -10,8 +10,13 @@ child_script <- function(work, folder) {
     "hard <- study(data.frame(community = rep(1:300, each = 300), member = rep(1:300, 300)))",
     "edge <- beliefs(0.5, 2.8159, 1)",
     "invisible(gc()); start <- folkmote:::raw_live_handles()",
-    sprintf("say <- function(name, text) { f <- file.path('%s', name); writeLines(text, paste0(f, '_')); file.rename(paste0(f, '_'), f) }", folder),
-    "invisible(say('started', as.character(Sys.getpid())))",
+    sprintf("folder <- '%s'", folder),
+    "say <- function(name, text) {",
+    "  f <- file.path(folder, name)",
+    "  writeLines(text, paste0(f, '_'))",
+    "  invisible(file.rename(paste0(f, '_'), f))",
+    "}",
+    "say('started', as.character(Sys.getpid()))",
     "caught <- tryCatch({", work, "'finished' }, interrupt = function(i) class(i)[1])",
     "again <- as.data.frame(equilibrium(study(data.frame(community = 1, member = 1:5)), b))$verdict",
     "gc(); left <- folkmote:::raw_live_handles() - start",
@@ -30,7 +35,8 @@ interrupted <- function(work) {
   dir.create(folder)
   script <- file.path(folder, "child.R")
   writeLines(child_script(work, folder), script)
-  system2(file.path(R.home("bin"), "Rscript"), script, wait = FALSE, stdout = FALSE, stderr = file.path(folder, "log"))
+  system2(file.path(R.home("bin"), "Rscript"), script, wait = FALSE, stdout = FALSE,
+    stderr = file.path(folder, "log"))
   if (!await(file.path(folder, "started"), 30)) stop("the child did not start: ", readLines(file.path(folder, "log")))
   pid <- as.integer(readLines(file.path(folder, "started")))
   Sys.sleep(0.7)

@@ -13,7 +13,8 @@ test_that("objects survive saveRDS", {
   expect_identical(as.data.frame(turnout(back$eq, given = 0.2)), as.data.frame(turnout(eq, given = 0.2)))
   expect_identical(as.data.frame(counterfactual(back$eq, back$sc, draws = 50, seed = 7)), as.data.frame(cf))
   expect_identical(as.data.frame(counterfactual(eq, back$sc, draws = 50, seed = 7)), as.data.frame(cf))
-  expect_identical(as.data.frame(scenario(back$st, broadcast(precision = 2), thin_links(0.5, seed = 1))), as.data.frame(sc))
+  expect_identical(as.data.frame(scenario(back$st, broadcast(precision = 2), thin_links(0.5, seed = 1))),
+    as.data.frame(sc))
   expect_identical(back$cf, cf)
   expect_identical(as.character(provenance(back$eq)), as.character(provenance(eq)))
 })
@@ -78,7 +79,8 @@ test_that("provenance names everything a data editor asks for", {
   eq <- equilibrium(st, good_beliefs())
   cf <- counterfactual(eq, scenario(st, thin_links(0.5, seed = 41)), draws = 50, seed = 42)
   text <- as.character(provenance(cf))
-  for (item in c("folkmote: ", "stream version: ", "seed: ", "digest of equilibrium: ", "digest of scenario: ", "digest of result: ", "R: ", "platform: ", "time: ")) {
+  for (item in c("folkmote: ", "stream version: ", "seed: ", "digest of equilibrium: ", "digest of scenario: ",
+    "digest of result: ", "R: ", "platform: ", "time: ")) {
     expect_true(any(startsWith(text, item)), label = item)
   }
   expect_true(any(grepl("^seed: +42$", text)))

@@ -49,7 +49,8 @@ test_that("all communities in one study give what each gives alone", {
   expect_identical(together, apart)
   names(mu) <- names(alpha) <- vapply(parts, function(part) part$members$community[1], "")
   shuffled <- sample(12)
-  expect_identical(as.data.frame(equilibrium(st, beliefs(mu[shuffled], alpha[shuffled]), share_payoff(reach = 0.35))), together)
+  expect_identical(as.data.frame(equilibrium(st, beliefs(mu[shuffled], alpha[shuffled]),
+    share_payoff(reach = 0.35))), together)
 })
 
 test_that("the spread of turnout agrees with mvtnorm and pbivnorm", {
@@ -99,7 +100,8 @@ test_that("a scenario is worth what solving the edited community says", {
     expect_lt(abs(cf$scenario_greatest[2] - truth), 1e-9)
     expect_lt(abs(cf$difference_greatest[2] - (truth - as.data.frame(eq)$turnout_greatest)), 1e-9)
     expect_true(all(is.na(cf$spread_low)))
-    solved <- equilibrium(sc, beliefs(part$oracle$mu, part$oracle$alpha), share_payoff(reach = x$reach), tolerance = 1e-10)
+    solved <- equilibrium(sc, beliefs(part$oracle$mu, part$oracle$alpha), share_payoff(reach = x$reach),
+      tolerance = 1e-10)
     expect_lt(abs(as.data.frame(solved)$turnout_greatest - truth), 1e-9)
   }
 })

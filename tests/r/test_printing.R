@@ -14,7 +14,8 @@ solve_several <- function(st, ...) {
 }
 everything <- function(st, eq) {
   list(
-    st, eq, summary(st), summary(eq), turnout(eq), turnout(eq, given = c(0, 0.5, 1)), turnout(eq, at_least = c(0.2, 0.5)),
+    st, eq, summary(st), summary(eq), turnout(eq), turnout(eq, given = c(0, 0.5, 1)), turnout(eq,
+      at_least = c(0.2, 0.5)),
     turnout(eq, given = c(0, 1), at_least = 0.5), simulate(eq, 30, seed = 1), scenario(st, cut_links()),
     counterfactual(eq, scenario(st, broadcast(precision = 2)), draws = 30, seed = 1),
     counterfactual(eq, scenario(st, gathering()), draws = 0)
@@ -78,7 +79,8 @@ test_that("what has not converged never prints as an answer", {
   open <- frame$verdict == "not converged"
   expect_true(any(open))
   results <- list(
-    eq, summary(eq), turnout(eq), turnout(eq, given = 0.3, at_least = 0.5), simulate(eq, 3, seed = 1), simulate(eq, 30, seed = 1),
+    eq, summary(eq), turnout(eq), turnout(eq, given = 0.3, at_least = 0.5), simulate(eq, 3, seed = 1), simulate(eq,
+      30, seed = 1),
     counterfactual(eq, scenario(st, cut_links()), draws = 10, seed = 1)
   )
   for (x in results) {

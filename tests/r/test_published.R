@@ -38,7 +38,8 @@ test_that("the uniqueness bound is Morris and Shin's condition", {
 })
 
 test_that("without benefit the model is a probit", {
-  st <- study(data.frame(community = "g", member = 1:5, cost = c(-0.3, 0, 0.2, 0.5, 1), stake_sd = c(0, 0.1, 0.4, 1, 2)))
+  st <- study(data.frame(community = "g", member = 1:5, cost = c(-0.3, 0, 0.2, 0.5, 1),
+    stake_sd = c(0, 0.1, 0.4, 1, 2)))
   eq <- equilibrium(st, beliefs(0.4, 2, 3), share_payoff(benefit = 0))
   found <- as.data.frame(eq, level = "member")
   expect_equal(found$cutoff_greatest, -c(-0.3, 0, 0.2, 0.5, 1), tolerance = 1e-10)

@@ -22,7 +22,8 @@ test_that("Zachary's karate club, as igraph carries it", {
   names(table) <- c("listener", "speaker")
   b <- beliefs(prior_mean = 0.4, prior_precision = 1, signal_precision = 2, stake_sd = 0.2)
   eq <- equilibrium(st, b)
-  expect_identical(eq$provenance$inputs, equilibrium(study(members, cbind(community = "club", table), mutual = TRUE), b)$provenance$inputs)
+  expect_identical(eq$provenance$inputs,
+    equilibrium(study(members, cbind(community = "club", table), mutual = TRUE), b)$provenance$inputs)
   x <- plain_oracle(igraph::as_adjacency_matrix(graph, sparse = FALSE) > 0, 0.4, 1, 2, 0.2)
   info <- oracle_information(x)
   truth <- oracle_cutoffs(x, info)
@@ -32,7 +33,8 @@ test_that("Zachary's karate club, as igraph carries it", {
   expect_lt(max(abs(found$cutoff_greatest - truth$greatest)), 1e-9)
   expect_lt(abs(as.data.frame(eq)$turnout_least - oracle_turnout(x, truth$least, info)), 1e-9)
   curve <- as.data.frame(turnout(eq, given = seq(-1, 2, 0.5)))
-  expect_lt(max(abs(curve$turnout_least - vapply(curve$given, oracle_turnout_given, 0, x = x, cutoffs = truth$least, info = info))), 1e-9)
+  expect_lt(max(abs(curve$turnout_least - vapply(curve$given, oracle_turnout_given, 0, x = x, cutoffs = truth$least,
+    info = info))), 1e-9)
   expect_true(all(diff(curve$turnout_least) < 0))
   # Everyone meets: all hold the same information.
   cf <- as.data.frame(counterfactual(eq, scenario(st, gathering()), draws = 400, seed = 7))

@@ -36,7 +36,8 @@ test_that("a given seed leaves R's generator alone", {
 
 test_that("other seeds are refused with a sentence", {
   for (seed in list(NA, NA_real_, -1, 0.5, 2^53 + 2, Inf, NaN, "7", c(1, 2), list(1), TRUE)) {
-    expect_error(simulate(good_equilibrium(), 5, seed = seed), "'seed' must be NULL or one whole number from 0 to 2^53", fixed = TRUE, class = "folkmote_bad_argument")
+    expect_error(simulate(good_equilibrium(), 5, seed = seed),
+      "'seed' must be NULL or one whole number from 0 to 2^53", fixed = TRUE, class = "folkmote_bad_argument")
     expect_error(thin_links(0.1, seed = seed), "'seed' must be", fixed = TRUE)
   }
   expect_still_works()
@@ -47,7 +48,7 @@ test_that("plays do not depend on threads or on how many there are", {
   ten <- as.data.frame(simulate(eq, 10, seed = 7, threads = 1))
   expect_identical(as.data.frame(simulate(eq, 10, seed = 7, threads = 2)), ten)
   four <- as.data.frame(simulate(eq, 4, seed = 7))
-  expect_identical(four, ten[ten$replication <= 4, ], ignore_attr = "row.names")
+  expect_identical(four, data.frame(ten[ten$replication <= 4, ], row.names = NULL))
   one <- as.data.frame(equilibrium(good_study(), good_beliefs(), threads = 1), level = "member")
   expect_identical(as.data.frame(equilibrium(good_study(), good_beliefs(), threads = 2), level = "member"), one)
 })

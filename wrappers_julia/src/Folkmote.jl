@@ -31,7 +31,7 @@ one from the repository. All numbers come from that kernel, the same as in R, to
 """
 module Folkmote
 
-import Dates, Libdl, Logging, Random, SparseArrays
+import Dates, Libdl, Logging, Random
 using Printf: @sprintf
 
 export study, beliefs, share_payoff, equilibrium, turnout, simulate, counterfactual

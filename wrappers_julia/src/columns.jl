@@ -156,7 +156,6 @@ as_id(::Type{T}, label::AbstractString) where {T<:Number} = T(parse(Int64, label
 as_id(::Type{Symbol}, label) = Symbol(label)
 as_id(::Type{Char}, label) = only(string(label))
 as_id(::Type{T}, label) where {T} = isconcretetype(T) ? convert(T, string(label)) : string(label)
-as_id(::Type, ::Missing) = missing
 
 "Columns whose text is one of a few words come back as symbols."
 is_category(name) = name in (:scope, :chance_method) || endswith(String(name), "verdict")
@@ -169,7 +168,7 @@ function as_asked(name, values, ids)
 end
 
 as_ids(::Type{T}, labels::Vector{T}) where {T} = labels
-as_ids(::Type{T}, labels) where {T} = [as_id(T, label) for label in labels]
+as_ids(::Type{T}, labels) where {T} = [ismissing(label) ? missing : as_id(T, label) for label in labels]
 
 "All columns of a kernel table as a NamedTuple of vectors."
 function read_table(table::Handle{Raw.folkmote_table}, ids)

@@ -39,9 +39,12 @@ function pooled_sentence(table, cell)
     return "Pooled turnout: $before in the baseline, $after in the scenario"
 end
 
-counterfactual_subtitle(table) =
-    string(communities_text(length(table.scope) - 1), "; scenario minus baseline",
-           isnan(table.spread_low[1]) ? "" : "; thin lines: 5 to 95 % of plays; thick bars: interval over equilibria")
+function counterfactual_subtitle(table)
+    several = SEVERAL in table.baseline_verdict || SEVERAL in table.scenario_verdict
+    return string(communities_text(length(table.scope) - 1), "; marks: expected change",
+                  several ? "; thick bars: over all equilibria" : "",
+                  isnan(table.spread_low[1]) ? "" : "; thin lines: 5 to 95 % of plays")
+end
 
 function change_legend(table)
     entries = (("turnout rises", BLUE), ("turnout falls", ORANGE), ("sign open", QUIET), ("no answer", GREY))

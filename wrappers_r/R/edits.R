@@ -51,7 +51,8 @@ set_beliefs <- function(...) {
   handle <- raw_beliefs_create() # values out of range stop here, not later in scenario()
   for (name in names(values)) raw_beliefs_set(handle, parameter_code[[name]], as.double(values[[name]]))
   raw_handle_release(handle)
-  text <- paste0("set ", paste0(gsub("_", " ", names(values)), " to ", vapply(values, parameter_text, ""), collapse = ", "))
+  text <- paste0("set ",
+    paste0(gsub("_", " ", names(values)), " to ", vapply(values, parameter_text, ""), collapse = ", "))
   new_edit("set_beliefs", values = values, text = text)
 }
 
@@ -90,7 +91,8 @@ apply_edit <- function(handle, edit, study) {
   }
   with_audience <- function(use) with_table(edit$audience, "audience", use)
   with_links <- function(use) {
-    with_table(as_links(edit$links, study$members, edit$mutual), "links", function(table) use(handle, table, edit$mutual))
+    with_table(as_links(edit$links, study$members, edit$mutual), "links",
+      function(table) use(handle, table, edit$mutual))
   }
   switch(edit$kind,
     add_links = with_links(raw_scenario_add_links),

@@ -35,7 +35,8 @@ names_of_networks <- function(links, members) {
   if (unnamed) stop_data("links: the list of networks must be named by community.")
   fault <- which(!labels %in% known)
   if (length(fault) > 0L) {
-    stop_data("links: network ", named_list(labels[fault]), ": no member belongs to such a community; correct the name.")
+    stop_data("links: network ", named_list(labels[fault]),
+      ": no member belongs to such a community; correct the name.")
   }
   if (anyDuplicated(labels)) {
     stop_data("links: network '", labels[duplicated(labels)][1L], "' stands twice; give one network per community.")
@@ -67,7 +68,10 @@ network_links <- function(networks, members, labels, mutual) {
   })
   columns <- unique(lapply(parts, names))
   if (length(columns) > 1L) {
-    stop_data("links: some networks carry the edge attribute 'relay_precision' and others do not; give it to all or none.")
+    stop_data(
+      "links: some networks carry the edge attribute 'relay_precision' and others do not; ",
+      "give it to all or to none."
+    )
   }
   do.call(rbind, parts)
 }
@@ -113,7 +117,8 @@ graph_arrows <- function(graph, mutual) {
 
 matrix_arrows <- function(matrix, label) {
   if (nrow(matrix) != ncol(matrix)) {
-    stop_data("links: matrix '", label, "' has ", nrow(matrix), " rows and ", ncol(matrix), " columns; it must be square.")
+    stop_data("links: matrix '", label, "' has ", nrow(matrix), " rows and ", ncol(matrix),
+      " columns; it must be square.")
   }
   row_names <- rownames(matrix)
   if (!is.null(row_names) && !is.null(colnames(matrix)) && !identical(row_names, colnames(matrix))) {
@@ -136,7 +141,8 @@ matrix_entries <- function(matrix, label) {
     j <- matrix@j + 1L
     value <- if (methods::.hasSlot(matrix, "x")) matrix@x else rep(TRUE, length(i))
   } else {
-    if (!is.numeric(matrix) && !is.logical(matrix)) stop_argument("links", "a matrix of numbers or of TRUE and FALSE", matrix)
+    if (!is.numeric(matrix) && !is.logical(matrix)) stop_argument("links",
+      "a matrix of numbers or of TRUE and FALSE", matrix)
     at <- which(is.na(matrix) | matrix != 0, arr.ind = TRUE)
     i <- at[, 1L]
     j <- at[, 2L]

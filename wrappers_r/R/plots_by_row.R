@@ -1,6 +1,7 @@
 # Pictures with one row per community.
 
-plot.folkmote_study <- function(x, sort = TRUE, ...) plot_listening(x$summary, "Who is in the study, and who is heard", sort)
+plot.folkmote_study <- function(x, sort = TRUE, ...) plot_listening(x$summary,
+  "Who is in the study, and who is heard", sort)
 
 plot.folkmote_scenario <- function(x, sort = TRUE, ...) {
   subtitle <- paste(vapply(x$edits, `[[`, "", "text"), collapse = "; ")
@@ -37,7 +38,8 @@ plot_listening <- function(table, title, sort, subtitle = NULL) {
 draw_listening <- function(chart, lanes, table, observed) {
   y <- chart$y
   half <- 0.3 * chart$spacing
-  graphics::rect(0, y - half, lane_x(lanes[[1L]], table$members), y + half, col = see_through(ink[["quiet"]], 0.55), border = NA)
+  graphics::rect(0, y - half, lane_x(lanes[[1L]], table$members), y + half, col = see_through(ink[["quiet"]], 0.55),
+    border = NA)
   mean <- lane_x(lanes[[2L]], table$hears_mean)
   graphics::segments(mean, y, lane_x(lanes[[2L]], table$hears_most), y, col = ink[["settled"]], lwd = 1.5)
   graphics::points(mean, y, pch = 21L, bg = ink[["settled"]], col = ink[["settled"]], cex = 0.9 * chart$size)
@@ -98,7 +100,8 @@ plot.folkmote_counterfactual <- function(x, sort = TRUE, ...) {
   reach <- range(0, frame$difference_low, frame$difference_high, spread, na.rm = TRUE)
   pad <- max(0.06 * diff(reach), 0.005)
   left <- list(from = 0, to = 0.45, range = c(0, 1), title = "Expected turnout", percent = TRUE)
-  right <- list(from = 0.53, to = 1, range = reach + c(-pad, pad), title = "Difference (percentage points)", points = TRUE)
+  right <- list(from = 0.53, to = 1, range = reach + c(-pad, pad), title = "Difference (percentage points)",
+    points = TRUE)
   chart <- row_chart(
     labels, list(left, scaled_lane(right)), "What the scenario would change", short_edits(attr(x, "edits")),
     bold = c(TRUE, rep(FALSE, length(rest)))
@@ -126,14 +129,17 @@ draw_before_after <- function(chart, lane, frame) {
   open <- weakest(frame) == "not converged"
   nudge <- 0.16 * chart$spacing
   done <- !open
-  draw_range(lane, frame$baseline_least[done], frame$baseline_greatest[done], y[done] + nudge, ink[["before"]], "white", chart$size)
-  draw_range(lane, frame$scenario_least[done], frame$scenario_greatest[done], y[done] - nudge, ink[["after"]], ink[["after"]], chart$size)
+  draw_range(lane, frame$baseline_least[done], frame$baseline_greatest[done], y[done] + nudge, ink[["before"]],
+    "white", chart$size)
+  draw_range(lane, frame$scenario_least[done], frame$scenario_greatest[done], y[done] - nudge, ink[["after"]],
+    ink[["after"]], chart$size)
   say_open(lane, open, chart)
 }
 
 draw_range <- function(lane, low, high, y, colour, bg, size) {
   graphics::segments(lane_x(lane, low), y, lane_x(lane, high), y, col = colour, lwd = 2.5 * size, lend = 1L)
-  graphics::points(lane_x(lane, c(low, high)), rep(y, 2L), pch = 21L, col = colour, bg = bg, cex = 0.75 * size, lwd = 1.3)
+  graphics::points(lane_x(lane, c(low, high)), rep(y, 2L), pch = 21L, col = colour, bg = bg, cex = 0.75 * size,
+    lwd = 1.3)
 }
 
 draw_differences <- function(chart, lane, frame, spread) {
@@ -147,7 +153,8 @@ draw_differences <- function(chart, lane, frame, spread) {
   }
   single <- done & frame$difference_high - frame$difference_low < 0.002
   wide <- done & !single
-  graphics::segments(lane_x(lane, frame$difference_low[wide]), y[wide], lane_x(lane, frame$difference_high[wide]), y[wide],
+  graphics::segments(lane_x(lane, frame$difference_low[wide]), y[wide], lane_x(lane, frame$difference_high[wide]),
+    y[wide],
     col = ink[["split"]], lwd = 5 * chart$size, lend = 1L
   )
   graphics::points(lane_x(lane, frame$difference_high[single]), y[single],

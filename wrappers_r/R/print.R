@@ -73,7 +73,8 @@ contraction_bound = "bound", chance_method = "method"
 column_text <- function(values) {
   if (!is.double(values)) return(blank_missing(as.character(values), values))
   whole <- !is.na(values) & is.finite(values) & values == floor(values)
-  if (all(whole | is.na(values)) && any(abs(values[whole]) > 1)) return(blank_missing(sprintf("%.0f", values), values))
+  if (all(whole | is.na(values)) && any(abs(values[whole]) > 1)) return(blank_missing(sprintf("%.0f", values),
+    values))
   size <- max_size(values)
   form <- if (size >= 100) "%.1f" else if (size == 0 || size >= 0.001) "%.3f" else "%.1e"
   blank_missing(sprintf(form, values), values)

@@ -29,12 +29,17 @@ record_of <- function(x) {
 }
 
 record_lines <- function(record) {
+  items <- record_items(record)
+  paste0(format(paste0(names(items), ":")), " ", items)
+}
+
+record_items <- function(record) {
   given <- record$inputs[record$inputs != "0000000000000000"]
-  items <- c(
+  c(
     result = record$what,
     folkmote = record$folkmote,
     "stream version" = record$stream,
-    seed = if (is.null(record$seed)) "none: nothing was drawn" else plain_number(record$seed),
+    seed = seed_text(record$seed),
     if (!is.null(record$settings)) vapply(record$settings, plain_number, ""),
     stats::setNames(given, paste("digest of", ifelse(names(given) == "all", "inputs", names(given)))),
     "digest of result" = record$output,
@@ -42,7 +47,11 @@ record_lines <- function(record) {
     platform = record$platform,
     time = record$time
   )
-  paste0(format(paste0(names(items), ":")), " ", items)
+}
+
+as.data.frame.folkmote_provenance <- function(x, row.names = NULL, optional = FALSE, ...) {
+  items <- record_items(attr(x, "record"))
+  data.frame(item = names(items), value = unname(items))
 }
 
 print.folkmote_provenance <- function(x, ...) {
@@ -52,3 +61,7 @@ print.folkmote_provenance <- function(x, ...) {
 
 as.character.folkmote_provenance <- function(x, ...) as.vector(unclass(x))
 format.folkmote_provenance <- function(x, ...) as.vector(unclass(x))
+
+seed_text <- function(seed) {
+  if (is.null(seed)) "none: nothing was drawn" else paste(vapply(seed, plain_number, ""), collapse = ", ")
+}

@@ -5,7 +5,10 @@ scenario <- function(study, ...) {
   edits <- list(...)
   fault <- which(!vapply(edits, inherits, NA, what = "folkmote_edit"))
   if (length(fault) > 0L) {
-    wanted <- "an edit: add_links(), cut_links(), thin_links(), broadcast(), gathering(), shift_cost(), set_beliefs() or forward_reports()"
+    wanted <- paste(
+      "an edit: add_links(), cut_links(), thin_links(), broadcast(), gathering(), shift_cost(), set_beliefs()",
+      "or forward_reports()"
+    )
     stop_argument(paste0("..", fault[1L]), wanted, edits[[fault[1L]]])
   }
   names(edits) <- NULL
@@ -21,7 +24,8 @@ scenario <- function(study, ...) {
   handle <- scenario_handle(x)
   summary <- from_table(raw_study_summary(study_handle(x)), study$members)
   record <- provenance_record(
-    "scenario", inputs = c("baseline and edits" = raw_scenario_digest(handle)), output = summary, seed = edit_seeds(edits)
+    "scenario",
+    inputs = c("baseline and edits" = raw_scenario_digest(handle)), output = summary, seed = edit_seeds(edits)
   )
   attr(summary, "digest") <- NULL
   class(x) <- NULL

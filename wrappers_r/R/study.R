@@ -37,7 +37,8 @@ summary.folkmote_study <- function(object, ...) new_result(object$summary, "stud
 
 print.folkmote_study <- function(x, rows = 12, ...) {
   head <- x$summary
-  cat("Study: ", count_of(nrow(head), "community", "communities"), ", ", count_of(nrow(x$members), "member"), "\n", sep = "")
+  cat("Study: ", count_of(nrow(head), "community", "communities"), ", ", count_of(nrow(x$members), "member"), "\n",
+    sep = "")
   show_communities(head, head$members, rows)
   invisible(x)
 }
@@ -49,6 +50,7 @@ print.folkmote_study <- function(x, rows = 12, ...) {
 
 refuse_change <- function(x) {
   stop(folkmote_condition("folkmote_bad_argument", paste0(
-    "an object of class '", class(x)[1L], "' cannot be changed in place; make a new one, or describe edits with scenario()."
+    "an object of class '", class(x)[1L], "' cannot be changed in place; ",
+    "make a new one, or describe edits with scenario()."
   )))
 }

@@ -25,13 +25,15 @@ simulate.folkmote_equilibrium <- function(object, nsim = 1, seed = NULL, given =
   )
   result <- result_of(object, from_table(table, object$study$members), "simulation", seed = seed)
   attr(result, "level") <- level
+  attr(result, "seed") <- seed
   result
 }
 
 # A table that came from an equilibrium, with its verdicts and its record.
 result_of <- function(eq, frame, kind, seed = NULL, inputs = NULL) {
   record <- provenance_record(
-    kind, inputs = c(equilibrium = raw_equilibrium_digest(equilibrium_handle(eq)), inputs), output = frame, seed = seed,
+    kind, inputs = c(equilibrium = raw_equilibrium_digest(equilibrium_handle(eq)),
+      inputs), output = frame, seed = seed,
     settings = c(tolerance = eq$tolerance, sweeps = eq$sweeps)
   )
   new_result(frame, kind, record, verdicts = verdicts_of(eq))

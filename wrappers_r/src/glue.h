@@ -6,6 +6,7 @@
 #define R_NO_REMAP
 #include <R.h>
 #include <Rinternals.h>
+#include <time.h>
 
 #include "folkmote.h"
 
@@ -55,8 +56,10 @@ SEXP fm_handle_release(SEXP handle);
 /* ---- options carry the state of their progress callback (options.c) ---- */
 typedef struct fm_options {
   folkmote_options *options;
-  int show; /* write progress to the console */
-  int shown;
+  int show;             /* write progress to the console */
+  int shown;            /* a progress line stands there now */
+  int percent, seconds; /* as last written */
+  time_t started;
   int64_t done, total;
 } fm_options;
 

@@ -3,12 +3,21 @@
  * R_ToplevelExec and only its outcome is passed on. */
 #include "routines.h"
 
+/* Rewritten when the percentage or the second changes, so that a console is not flooded. */
+static void show_progress(fm_options *state) {
+  const int percent = state->total > 0 ? (int)(100.0 * (double)state->done / (double)state->total) : 0;
+  const int seconds = (int)difftime(time(NULL), state->started);
+  if (seconds < 1 || (percent == state->percent && seconds == state->seconds)) return;
+  state->percent = percent;
+  state->seconds = seconds;
+  state->shown = 1;
+  REprintf("\rfolkmote: %3d %% after %d s", percent, seconds);
+}
+
 static void look(void *user) {
   fm_options *state = user;
   R_CheckUserInterrupt();
-  if (!state->show || state->total <= 0) return;
-  REprintf("\rfolkmote: %3d %%", (int)(100.0 * (double)state->done / (double)state->total));
-  state->shown = 1;
+  if (state->show) show_progress(state);
 }
 
 static int poll(int64_t done, int64_t total, void *user) {
@@ -51,6 +60,7 @@ SEXP fm_options_progress(SEXP options, SEXP show) {
   char message[FOLKMOTE_MESSAGE_BYTES] = "";
   fm_options *state = state_of(options);
   state->show = fm_whole(show, "show");
+  state->started = time(NULL);
   const int status = folkmote_options_progress(state->options, poll, state, message);
   return fm_reply(status, message, R_NilValue);
 }
@@ -58,7 +68,7 @@ SEXP fm_options_progress(SEXP options, SEXP show) {
 /* Wipe the progress line, if one was written. */
 SEXP fm_options_finish(SEXP options) {
   fm_options *state = state_of(options);
-  if (state->shown) REprintf("\r                    \r");
+  if (state->shown) REprintf("\r%40s\r", "");
   state->shown = 0;
   return R_NilValue;
 }

@@ -104,4 +104,6 @@ SEXP fm_table_get_real(SEXP table, SEXP column) {
   return reply;
 }
 
-SEXP fm_table_digest(SEXP table) { return fm_digest(folkmote_table_digest(fm_handle_or_null(table, &fm_kind_table))); }
+SEXP fm_table_digest(SEXP table) {
+  return fm_digest(folkmote_table_digest(fm_handle_or_null(table, &fm_kind_table)));
+}

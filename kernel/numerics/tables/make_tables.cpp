@@ -1,6 +1,7 @@
-// Makes the numerical tables of this folder. Run once, by hand; the results are committed beside it.
+// Makes the numerical tables of this folder (*_rows.hpp). Run by hand; the results are committed beside it, and running
+// it again gives the same files.
 //
-//     g++ -std=c++20 -O2 -o make_tables make_tables.cpp && ./make_tables <this folder>
+//     g++ -std=c++20 -O2 -o make_tables make_tables.cpp && ./make_tables .        (needs the headers of Boost)
 //
 // All values are computed with 80 decimal digits (Boost.Multiprecision), rounded once to double and written
 // as hexadecimal literals, so that every compiler reads the same bits.
@@ -27,203 +28,210 @@ Real density(const Real& x) { return exp(-x * x / 2) / sqrt(2 * pi); }
 // Phi(-a) for a >= 0. Below 9 the Taylor series of Phi about 0 (Abramowitz & Stegun 26.2.11), whose cancellation
 // costs at most 19 of the 80 digits; above, the continued fraction of Laplace (26.2.14).
 Real upper_tail(const Real& a) {
-    if (a < 9) {
-        Real term = a, sum = a;
-        for (int k = 3; abs(term) > abs(sum) * Real(1e-90); k += 2) {
-            term *= a * a / k;
-            sum += term;
-        }
-        return Real(0.5) - density(a) * sum;
+  if (a < 9) {
+    Real term = a, sum = a;
+    for (int k = 3; abs(term) > abs(sum) * Real(1e-90); k += 2) {
+      term *= a * a / k;
+      sum += term;
     }
-    Real fraction = a;
-    for (int k = 600; k >= 1; --k) fraction = a + k / fraction;
-    return density(a) / fraction;
+    return Real(0.5) - density(a) * sum;
+  }
+  Real fraction = a;
+  for (int k = 600; k >= 1; --k) fraction = a + k / fraction;
+  return density(a) / fraction;
 }
 
 // a * (Mills ratio) / sqrt(2 pi) as a function of u = 1/a^2: tends to 1/sqrt(2 pi) as u tends to 0.
 Real scaled_mills(const Real& u) {
-    const Real a = 1 / sqrt(u);
-    if (a > 200) {  // asymptotic series (26.2.12); its terms fall below 1e-60 here
-        Real term = 1, sum = 1;
-        for (int k = 1; k < 40; ++k) {
-            term *= -u * (2 * k - 1);
-            sum += term;
-        }
-        return sum / sqrt(2 * pi);
+  const Real a = 1 / sqrt(u);
+  if (a > 200) {  // asymptotic series (26.2.12); its terms fall below 1e-60 here
+    Real term = 1, sum = 1;
+    for (int k = 1; k < 40; ++k) {
+      term *= -u * (2 * k - 1);
+      sum += term;
     }
-    return a * upper_tail(a) / density(a) / sqrt(2 * pi);
+    return sum / sqrt(2 * pi);
+  }
+  return a * upper_tail(a) / density(a) / sqrt(2 * pi);
 }
 
 // The a >= 0 with Phi(-a) = p, from log p, by Newton's method on log Phi.
 Real tail_quantile(const Real& log_p) {
-    Real a = sqrt(-2 * log_p);
-    if (a > 2) a = sqrt(-2 * (log_p + log(a * sqrt(2 * pi))));
-    if (!(a > 0)) a = Real(0.5);
-    for (int i = 0; i < 60; ++i) {
-        const Real q = upper_tail(a);
-        const Real step = (log(q) - log_p) * q / density(a);
-        a += step;
-        if (abs(step) < Real(1e-45) * a) break;
-    }
-    return a;
+  Real a = sqrt(-2 * log_p);
+  if (a > 2) a = sqrt(-2 * (log_p + log(a * sqrt(2 * pi))));
+  if (!(a > 0)) a = Real(0.5);
+  for (int i = 0; i < 60; ++i) {
+    const Real q = upper_tail(a);
+    const Real step = (log(q) - log_p) * q / density(a);
+    a += step;
+    if (abs(step) < Real(1e-45) * a) break;
+  }
+  return a;
 }
 
 // Polynomial through the Chebyshev points of [low, high], in powers of (x - centre).
 Row chebyshev_row(const std::function<Real(const Real&)>& f, const Real& low, const Real& high, const Real& centre,
                   int coefficients) {
-    const int n = coefficients;
-    std::vector<Real> point(n), difference(n);
-    for (int i = 0; i < n; ++i) {
-        const Real x = (low + high) / 2 + (high - low) / 2 * cos(pi * (2 * i + 1) / (2 * n));
-        point[i] = x - centre;
-        difference[i] = f(x);
-    }
-    for (int order = 1; order < n; ++order)
-        for (int i = n - 1; i >= order; --i)
-            difference[i] = (difference[i] - difference[i - 1]) / (point[i] - point[i - order]);
-    Row row(n, Real(0));
-    for (int i = n - 1; i >= 0; --i) {  // row <- row * (t - point[i]) + difference[i]
-        for (int j = n - 1; j > 0; --j) row[j] = row[j - 1] - row[j] * point[i];
-        row[0] = difference[i] - row[0] * point[i];
-    }
-    return row;
+  const int n = coefficients;
+  std::vector<Real> point(n), difference(n);
+  for (int i = 0; i < n; ++i) {
+    const Real x = (low + high) / 2 + (high - low) / 2 * cos(pi * (2 * i + 1) / (2 * n));
+    point[i] = x - centre;
+    difference[i] = f(x);
+  }
+  for (int order = 1; order < n; ++order)
+    for (int i = n - 1; i >= order; --i)
+      difference[i] = (difference[i] - difference[i - 1]) / (point[i] - point[i - order]);
+  Row row(n, Real(0));
+  for (int i = n - 1; i >= 0; --i) {  // row <- row * (t - point[i]) + difference[i]
+    for (int j = n - 1; j > 0; --j) row[j] = row[j - 1] - row[j] * point[i];
+    row[0] = difference[i] - row[0] * point[i];
+  }
+  return row;
 }
 
 class Header {
-public:
-    Header(const std::string& folder, const char* name, const char* about) : file_(std::fopen((folder + "/" + name).c_str(), "w")) {
-        if (file_ == nullptr) std::perror(name), std::exit(1);
-        std::fprintf(file_, "// Generated by make_tables.cpp: change that program, not this file.\n// %s\n#pragma once\n\n", about);
-        std::fprintf(file_, "#include \"numerics/strict.hpp\"\n\nnamespace folkmote::tables {\n\n");
-    }
-    ~Header() {
-        std::fprintf(file_, "}  // namespace folkmote::tables\n");
-        std::fclose(file_);
-    }
-    Header(const Header&) = delete;
+ public:
+  Header(const std::string& folder, const char* name, const char* about)
+      : file_(std::fopen((folder + "/" + name).c_str(), "w")) {
+    if (file_ == nullptr) std::perror(name), std::exit(1);
+    std::fprintf(file_,
+                 "// Generated by make_tables.cpp: change that program, not this file.\n// %s\n// clang-format "
+                 "off\n#pragma once\n\n",
+                 about);
+    std::fprintf(file_, "#include \"numerics/strict.hpp\"\n\nnamespace folkmote::tables {\n\n");
+  }
+  ~Header() {
+    std::fprintf(file_, "}  // namespace folkmote::tables\n");
+    std::fclose(file_);
+  }
+  Header(const Header&) = delete;
 
-    void rows(const char* comment, const char* name, const std::vector<Row>& all) {
-        std::fprintf(file_, "// %s\nalignas(64) inline constexpr double %s[%zu][%zu] = {\n", comment, name, all.size(), all[0].size());
-        for (const Row& row : all) std::fprintf(file_, "    {"), numbers(row), std::fprintf(file_, "},\n");
-        std::fprintf(file_, "};\n\n");
-    }
-    void row(const char* comment, const char* name, const Row& row) {
-        std::fprintf(file_, "// %s\nalignas(16) inline constexpr double %s[%zu] = {", comment, name, row.size());
-        numbers(row);
-        std::fprintf(file_, "};\n\n");
-    }
+  void rows(const char* comment, const char* name, const std::vector<Row>& all) {
+    std::fprintf(file_, "// %s\nalignas(64) inline constexpr double %s[%zu][%zu] = {\n", comment, name, all.size(),
+                 all[0].size());
+    for (const Row& row : all) std::fprintf(file_, "    {"), numbers(row), std::fprintf(file_, "},\n");
+    std::fprintf(file_, "};\n\n");
+  }
+  void row(const char* comment, const char* name, const Row& row) {
+    std::fprintf(file_, "// %s\nalignas(16) inline constexpr double %s[%zu] = {", comment, name, row.size());
+    numbers(row);
+    std::fprintf(file_, "};\n\n");
+  }
 
-private:
-    void numbers(const Row& row) {
-        for (std::size_t j = 0; j < row.size(); ++j)
-            std::fprintf(file_, "%s%a", j == 0 ? "" : ", ", row[j].convert_to<double>());
-    }
-    std::FILE* file_;
+ private:
+  void numbers(const Row& row) {
+    for (std::size_t j = 0; j < row.size(); ++j)
+      std::fprintf(file_, "%s%a", j == 0 ? "" : ", ", row[j].convert_to<double>());
+  }
+  std::FILE* file_;
 };
 
 void normal_tables(const std::string& folder) {
-    Header out(folder, "normal_rows.hpp", "Polynomial pieces of the normal distribution function.");
-    std::vector<Row> rows;
-    for (int n = 0; n <= 538; ++n) {
-        const Real centre = Real(n) / 64;
-        rows.push_back(chebyshev_row(upper_tail, n == 0 ? Real(0) : centre - Real(1) / 128, centre + Real(1) / 128, centre, 8));
-    }
-    out.rows("Phi(-a), row n for |a - n/64| <= 1/128.", "normal_rows", rows);
-    const Real edge = Real(538) / 64;
-    out.row("a Phi(-a)/exp(-a^2/2) in powers of 1/a^2, for a >= 538/64.", "normal_tail",
-            chebyshev_row(scaled_mills, Real(0), 1 / (edge * edge), Real(0), 12));
+  Header out(folder, "normal_rows.hpp", "Polynomial pieces of the normal distribution function.");
+  std::vector<Row> rows;
+  for (int n = 0; n <= 538; ++n) {
+    const Real centre = Real(n) / 64;
+    rows.push_back(
+        chebyshev_row(upper_tail, n == 0 ? Real(0) : centre - Real(1) / 128, centre + Real(1) / 128, centre, 8));
+  }
+  out.rows("Phi(-a), row n for |a - n/64| <= 1/128.", "normal_rows", rows);
+  const Real edge = Real(538) / 64;
+  out.row("a Phi(-a)/exp(-a^2/2) in powers of 1/a^2, for a >= 538/64.", "normal_tail",
+          chebyshev_row(scaled_mills, Real(0), 1 / (edge * edge), Real(0), 12));
 }
 
 void quantile_tables(const std::string& folder) {
-    Header out(folder, "quantile_rows.hpp", "Polynomial pieces of the normal quantile.");
-    const auto centre_ratio = [](const Real& s) { return tail_quantile(log(Real(0.5) - sqrt(s))) / sqrt(s); };
-    const auto tail = [](const Real& r) { return tail_quantile(-r * r); };
-    std::vector<Row> centre_rows, tail_rows;
-    for (int n = 0; n <= 25; ++n) {
-        const Real c = Real(n) / 128;
-        centre_rows.push_back(chebyshev_row(centre_ratio, n == 0 ? Real(0) : c - Real(1) / 256, c + Real(1) / 256, c, 10));
-    }
-    for (int n = 13; n <= 219; ++n) {
-        const Real c = Real(n) / 8;
-        tail_rows.push_back(chebyshev_row(tail, c - Real(1) / 16, c + Real(1) / 16, c, 10));
-    }
-    out.rows("x/q for p = 1/2 + q as a function of s = q^2, row n for |s - n/128| <= 1/256.", "quantile_centre", centre_rows);
-    out.rows("-x as a function of r = sqrt(-log p), row n-13 for |r - n/8| <= 1/16.", "quantile_tail", tail_rows);
+  Header out(folder, "quantile_rows.hpp", "Polynomial pieces of the normal quantile.");
+  const auto centre_ratio = [](const Real& s) { return tail_quantile(log(Real(0.5) - sqrt(s))) / sqrt(s); };
+  const auto tail = [](const Real& r) { return tail_quantile(-r * r); };
+  std::vector<Row> centre_rows, tail_rows;
+  for (int n = 0; n <= 25; ++n) {
+    const Real c = Real(n) / 128;
+    centre_rows.push_back(chebyshev_row(centre_ratio, n == 0 ? Real(0) : c - Real(1) / 256, c + Real(1) / 256, c, 10));
+  }
+  for (int n = 13; n <= 219; ++n) {
+    const Real c = Real(n) / 8;
+    tail_rows.push_back(chebyshev_row(tail, c - Real(1) / 16, c + Real(1) / 16, c, 10));
+  }
+  out.rows("x/q for p = 1/2 + q as a function of s = q^2, row n for |s - n/128| <= 1/256.", "quantile_centre",
+           centre_rows);
+  out.rows("-x as a function of r = sqrt(-log p), row n-13 for |r - n/8| <= 1/16.", "quantile_tail", tail_rows);
 }
 
 // value = first + second with `bits` leading bits in first.
 Row split(const Real& value, int scale_bits) {
-    const Real scale = ldexp(Real(1), scale_bits);
-    const Real first = floor(value * scale + Real(0.5)) / scale;
-    return {first, value - first};
+  const Real scale = ldexp(Real(1), scale_bits);
+  const Real first = floor(value * scale + Real(0.5)) / scale;
+  return {first, value - first};
 }
 
 void elementary_tables(const std::string& folder) {
-    Header out(folder, "elementary_rows.hpp", "Tables of the exponential and the logarithm.");
-    const Real log2 = log(Real(2));
-    std::vector<Row> powers, logs;
-    for (int j = 0; j < 64; ++j) {
-        const Real value = exp(log2 * j / 64);
-        const Real first = Real(value.convert_to<double>());
-        powers.push_back({first, value - first});
-    }
-    out.rows("2^(j/64) as a double and the remainder.", "power_rows", powers);
-    // Cells of the mantissa: 128 cells of [1,2), those above sqrt(2) are halved into [sqrt(1/2), 1).
-    for (int i = 0; i < 128; ++i) {
-        const bool halved = i >= 53;
-        Real c = (Real(i) + Real(0.5)) / 128 + 1;
-        if (halved) c /= 2;
-        if (i == 0 || i == 127 || i == 126) c = 1;  // next to 1 the reduction must be exact
-        const Row logarithm = split(log(c), 42);
-        logs.push_back({c, 1 / c, logarithm[0], logarithm[1]});
-    }
-    out.rows("centre c, 1/c, log c rounded to a multiple of 2^-42, remainder; cell = first 7 bits of the mantissa.", "logarithm_rows", logs);
-    out.row("log 2 rounded to a multiple of 2^-42, remainder.", "log2_split", split(log2, 42));
-    out.row("(log 2)/64 rounded to a multiple of 2^-38, remainder, and 64/log 2.", "log2_64th",
-            {split(log2 / 64, 38)[0], split(log2 / 64, 38)[1], 64 / log2});
-    out.row("pi/2 and pi as doubles with their remainders.", "pi_split",
-            {Real((pi / 2).convert_to<double>()), pi / 2 - Real((pi / 2).convert_to<double>()), Real(pi.convert_to<double>()),
-             pi - Real(pi.convert_to<double>())});
-    const auto arcsine_ratio = [](const Real& s) { return (asin(sqrt(s)) / sqrt(s) - 1) / s; };
-    out.row("(asin(x)/x - 1)/x^2 in powers of x^2, for |x| <= 1/2.", "arcsine_row",
-            chebyshev_row(arcsine_ratio, Real(0), Real(0.25), Real(0), 14));
+  Header out(folder, "elementary_rows.hpp", "Tables of the exponential and the logarithm.");
+  const Real log2 = log(Real(2));
+  std::vector<Row> powers, logs;
+  for (int j = 0; j < 64; ++j) {
+    const Real value = exp(log2 * j / 64);
+    const Real first = Real(value.convert_to<double>());
+    powers.push_back({first, value - first});
+  }
+  out.rows("2^(j/64) as a double and the remainder.", "power_rows", powers);
+  // Cells of the mantissa: 128 cells of [1,2), those above sqrt(2) are halved into [sqrt(1/2), 1).
+  for (int i = 0; i < 128; ++i) {
+    const bool halved = i >= 53;
+    Real c = (Real(i) + Real(0.5)) / 128 + 1;
+    if (halved) c /= 2;
+    if (i == 0 || i == 127 || i == 126) c = 1;  // next to 1 the reduction must be exact
+    const Row logarithm = split(log(c), 42);
+    logs.push_back({c, 1 / c, logarithm[0], logarithm[1]});
+  }
+  out.rows("centre c, 1/c, log c rounded to a multiple of 2^-42, remainder; cell = first 7 bits of the mantissa.",
+           "logarithm_rows", logs);
+  out.row("log 2 rounded to a multiple of 2^-42, remainder.", "log2_split", split(log2, 42));
+  out.row("(log 2)/64 rounded to a multiple of 2^-38, remainder, and 64/log 2.", "log2_64th",
+          {split(log2 / 64, 38)[0], split(log2 / 64, 38)[1], 64 / log2});
+  const Real half_pi = Real((pi / 2).convert_to<double>());
+  out.row("pi/2 as a double and the remainder.", "half_pi_split", {half_pi, pi / 2 - half_pi});
+  const auto arcsine_ratio = [](const Real& s) { return (asin(sqrt(s)) / sqrt(s) - 1) / s; };
+  out.row("(asin(x)/x - 1)/x^2 in powers of x^2, for |x| <= 1/2.", "arcsine_row",
+          chebyshev_row(arcsine_ratio, Real(0), Real(0.25), Real(0), 14));
 }
 
 // Positive half of a Gauss-Legendre rule of even order: nodes and weights (Newton on the three-term recurrence).
 void legendre(Header& out, int order) {
-    Row nodes, weights;
-    for (int i = order / 2; i >= 1; --i) {
-        Real x = cos(pi * (i - Real(0.25)) / (order + Real(0.5))), slope = 1;
-        for (int pass = 0; pass < 12; ++pass) {
-            Real before = 1, now = x;
-            for (int k = 2; k <= order; ++k) {
-                const Real next = ((2 * k - 1) * x * now - (k - 1) * before) / k;
-                before = now;
-                now = next;
-            }
-            slope = order * (x * now - before) / (x * x - 1);
-            x -= now / slope;
-        }
-        nodes.push_back(x);
-        weights.push_back(2 / ((1 - x * x) * slope * slope));
+  Row nodes, weights;
+  for (int i = order / 2; i >= 1; --i) {
+    Real x = cos(pi * (i - Real(0.25)) / (order + Real(0.5))), slope = 1;
+    for (int pass = 0; pass < 12; ++pass) {
+      Real before = 1, now = x;
+      for (int k = 2; k <= order; ++k) {
+        const Real next = ((2 * k - 1) * x * now - (k - 1) * before) / k;
+        before = now;
+        now = next;
+      }
+      slope = order * (x * now - before) / (x * x - 1);
+      x -= now / slope;
     }
-    const std::string n = std::to_string(order);
-    out.row("Positive nodes, ascending.", ("legendre_nodes_" + n).c_str(), nodes);
-    out.row("Their weights.", ("legendre_weights_" + n).c_str(), weights);
+    nodes.push_back(x);
+    weights.push_back(2 / ((1 - x * x) * slope * slope));
+  }
+  const std::string n = std::to_string(order);
+  out.row("Positive nodes, ascending.", ("legendre_nodes_" + n).c_str(), nodes);
+  out.row("Their weights.", ("legendre_weights_" + n).c_str(), weights);
 }
 
 }  // namespace
 
 int main(int argc, char** argv) {
-    if (argc != 2) {
-        std::fprintf(stderr, "usage: %s <folder>\n", argv[0]);
-        return 2;
-    }
-    const std::string folder = argv[1];
-    normal_tables(folder);
-    quantile_tables(folder);
-    elementary_tables(folder);
-    Header rules(folder, "legendre_rows.hpp", "Gauss-Legendre rules on [-1, 1].");
-    for (int order : {6, 8, 12, 16, 20}) legendre(rules, order);
-    return 0;
+  if (argc != 2) {
+    std::fprintf(stderr, "usage: %s <folder>\n", argv[0]);
+    return 2;
+  }
+  const std::string folder = argv[1];
+  normal_tables(folder);
+  quantile_tables(folder);
+  elementary_tables(folder);
+  Header rules(folder, "legendre_rows.hpp", "Gauss-Legendre rules on [-1, 1].");
+  for (int order : {6, 8, 12, 16, 20}) legendre(rules, order);
+  return 0;
 }
