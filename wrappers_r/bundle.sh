@@ -59,7 +59,7 @@ check_includes() {
 write_makevars() {
   {
     echo 'CXX_STD = CXX20'
-    echo 'PKG_CPPFLAGS = -Icapi/include -Ikernel -isystem include'
+    echo 'PKG_CPPFLAGS = -Icapi/include -Ikernel -Iinclude'
     echo 'PKG_CFLAGS = $(C_VISIBILITY)'
     echo 'PKG_CXXFLAGS = $(CXX_VISIBILITY) -pthread'
     echo 'PKG_LIBS = -pthread'

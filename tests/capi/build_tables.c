@@ -13,10 +13,16 @@ const char *const sound_broadcasts[] = {"community:i 1 1", "broadcast:i 9 9", "m
 const char *const sound_gatherings[] = {"community:i 1 1", "gathering:i 5 5", "member:t a b", NULL};
 const char *const sound_communities[] = {"community:i 1 2", NULL};
 
-/* Splits `text` at blanks in place; returns the number of words. */
+/* Splits `text` at blanks in place; returns the number of words. Without strtok, which keeps a state of its own. */
 static int split(char *text, char **words) {
   int count = 0;
-  for (char *word = strtok(text, " "); word != NULL && count < most_rows; word = strtok(NULL, " ")) words[count++] = word;
+  while (count < most_rows) {
+    text += strspn(text, " ");
+    if (*text == '\0') break;
+    words[count++] = text;
+    text += strcspn(text, " ");
+    if (*text != '\0') *text++ = '\0';
+  }
   return count;
 }
 
