@@ -29,7 +29,7 @@ struct ReadLabels {
   std::vector<std::string> operator()(const std::vector<Text>& values) const {
     std::vector<std::string> labels(values.size());
     for (std::size_t r = 0; r < values.size(); ++r) {
-      if (values[r]) labels[r] = *values[r];
+      if (values[r] && !values[r]->empty()) labels[r] = *values[r];
       else missing.add(r);
     }
     return labels;
@@ -103,7 +103,7 @@ const Column& required(const NamedTable& source, const char* column) {
 }
 
 std::vector<std::string> read_labels(const NamedTable& source, const char* column) {
-  RowFaults missing(source.name, column, "an id is missing; give every row one");
+  RowFaults missing(source.name, column, "an id is missing or empty; give every row one");
   RowFaults broken(source.name, column, "an id is not a whole number up to 2^53; use whole numbers or text");
   std::vector<std::string> labels = std::visit(ReadLabels{missing, broken}, required(source, column).values);
   missing.raise_if_any();

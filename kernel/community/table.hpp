@@ -3,6 +3,7 @@
 #include "numerics/strict.hpp"
 
 #include <cstdint>
+#include <deque>
 #include <limits>
 #include <optional>
 #include <string>
@@ -27,7 +28,7 @@ class Table {
   explicit Table(std::size_t rows) : rows_(rows) {}
 
   std::size_t rows() const { return rows_; }
-  const std::vector<Column>& columns() const { return columns_; }
+  const std::deque<Column>& columns() const { return columns_; }
 
   /// Throws BadArgument when the name is empty or taken, or the length is not rows().
   void add(std::string name, Values values);
@@ -40,7 +41,7 @@ class Table {
 
  private:
   std::size_t rows_;
-  std::vector<Column> columns_;
+  std::deque<Column> columns_;  // columns never move: callers hold their names
 };
 
 }  // namespace folkmote
