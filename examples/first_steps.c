@@ -15,16 +15,16 @@ static int failed(folkmote_status status) {
 
 int main(void) {
   /* Tables in: four members, of whom Ada and Ben hear each other, and Cem and Dot both hear Ben. */
-  const char *home[] = {"north", "north", "north", "north"};
-  const char *who[] = {"Ada", "Ben", "Cem", "Dot"};
-  const char *listener[] = {"Ada", "Ben", "Cem", "Dot"};
-  const char *speaker[] = {"Ben", "Ada", "Ben", "Ben"};
+  const char* home[] = {"north", "north", "north", "north"};
+  const char* who[] = {"Ada", "Ben", "Cem", "Dot"};
+  const char* listener[] = {"Ada", "Ben", "Cem", "Dot"};
+  const char* speaker[] = {"Ben", "Ada", "Ben", "Ben"};
   const double prior_mean = 0.4, prior_precision = 1.0, signal_precision = 4.0, stake_sd = 0.2;
   folkmote_table *members = NULL, *links = NULL, *result = NULL;
-  folkmote_study *study = NULL;
-  folkmote_beliefs *beliefs = NULL;
-  folkmote_payoff *payoff = NULL;
-  folkmote_equilibrium *equilibrium = NULL;
+  folkmote_study* study = NULL;
+  folkmote_beliefs* beliefs = NULL;
+  folkmote_payoff* payoff = NULL;
+  folkmote_equilibrium* equilibrium = NULL;
 
   int bad = failed(folkmote_table_create(4, &members, message)) ||
             failed(folkmote_table_add_text(members, "community", home, message)) ||
@@ -46,7 +46,7 @@ int main(void) {
   /* Solve, and take a table out: community, verdict, contraction_bound, turnout_least, turnout_greatest, ... */
   bad = bad || failed(folkmote_equilibrium_create(study, beliefs, payoff, NULL, &equilibrium, message)) ||
         failed(folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_COMMUNITY, &result, message));
-  const char *verdict = NULL;
+  const char* verdict = NULL;
   double least = 0, greatest = 0;
   bad = bad || failed(folkmote_table_get_text(result, 1, &verdict, message)) ||
         failed(folkmote_table_get_real(result, 3, &least, message)) ||

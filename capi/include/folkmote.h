@@ -332,6 +332,8 @@ FOLKMOTE_API void folkmote_equilibrium_destroy(folkmote_equilibrium *equilibrium
  * chance_greatest (chance of acting before anything is known).
  * Verdicts: "proved unique" (contraction_bound < 1), "bracketed" (both ends agree within the tolerance, not
  * proved), "several" (the ends are proved to differ), "not converged" (width tells the enclosure reached).
+ * `contraction_bound`, rounded outward: max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)); where that is 1 or more and
+ * the ends agree, the weighted sup-norm bound on the finished enclosure, if smaller. Below 1 it proves one equilibrium.
  * `turnout_least` goes with the least cutoffs and `turnout_greatest` with the greatest; `width` is the largest
  * distance between the two cutoffs of a member; `iterations` are those of the slower end. Turnout and chances are
  * shares in 0..1, weighted by the column `weight`; cutoffs are in the units of the obstacle.

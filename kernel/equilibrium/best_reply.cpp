@@ -117,6 +117,28 @@ double BestReply::steepest(int member, std::span<const double> cutoffs, std::spa
   return direction[member] + row.benefit * sum;
 }
 
+double BestReply::surviving(int member, std::span<const double> least, std::span<const double> greatest,
+                            std::span<const double> v) const {
+  const Row& row = rows_[member];
+  if (row.benefit == 0.0) return 0.0;
+  double sum = 0.0;
+  for (std::size_t k = 0; k < row.member.size(); ++k) {
+    if (row.weight[k] == 0.0) continue;
+    if (row.sd[k] == 0.0) return infinity;
+    const int j = row.member[k];
+    const double rho = 1.0 - row.one_less_rho[k];
+    // kappa_j - mu - rho (kappa_i - mu) over the box; rho lies in [0, 1].
+    const double low = (least[j] - prior_mean_) - rho * (greatest[member] - prior_mean_);
+    const double high = (greatest[j] - prior_mean_) - rho * (least[member] - prior_mean_);
+    const double change = (v[j] - rho * v[member]) / row.sd[k];
+    const bool crosses = low < 0.0 && high > 0.0;
+    const double near = crosses ? 0.0 : std::min(std::fabs(low), std::fabs(high));
+    const double far = std::max(std::fabs(low), std::fabs(high));
+    sum += row.weight[k] * change * normal_density((change > 0.0 ? near : far) / row.sd[k]);
+  }
+  return row.benefit * sum;
+}
+
 bool BestReply::derivatives(int member, std::span<const double> cutoffs, std::span<double> out) {
   const Row& row = rows_[member];
   if (row.has_step) return false;

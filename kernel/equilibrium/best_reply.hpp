@@ -40,6 +40,11 @@ class BestReply {
   /// jumps.
   bool derivatives(int member, std::span<const double> cutoffs, std::span<double> row);
 
+  /// The largest value on the box least <= kappa <= greatest of
+  ///   b_i sum_j w_ij phi(z_ij) (v_j - rho_ij v_i) / s_ij.
+  double surviving(int member, std::span<const double> least, std::span<const double> greatest,
+                   std::span<const double> v) const;
+
   /// Cutoff of a member when nobody, or everybody in its reach, acts.
   double lowest(int member) const { return -rows_[member].cost; }
   double highest(int member) const;

@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "equilibrium/end.hpp"
+#include "equilibrium/uniqueness.hpp"
 
 namespace folkmote {
 
@@ -59,6 +60,11 @@ Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop) 
   }
   Enclosure result;
   result.contraction_bound = game.contraction_bound();
+  // Every equilibrium lies in the enclosure: once that is narrow, a bound on it decides what the global one could not.
+  if (result.contraction_bound >= 1.0 && width <= tolerance) {
+    result.contraction_bound =
+        std::min(result.contraction_bound, box_bound(game, least.cutoffs(), greatest.cutoffs()));
+  }
   result.width = width;
   result.iterations = std::max(greatest.iterations(), least.iterations());
   result.verdict = decide(result.contraction_bound, width, tolerance, greatest.certified() && least.certified());

@@ -27,7 +27,7 @@ struct Enclosure {
   std::vector<double> least;
   std::vector<double> greatest;
   Verdict verdict = Verdict::not_converged;
-  double contraction_bound = 0.0;
+  double contraction_bound = 0.0;  // below 1: a proof; see enclosure.cpp for the two bounds tried
   double width = 0.0;          // max_i greatest_i - least_i
   std::int64_t iterations = 0;  // sweeps and leaps of the end that took more
 };
