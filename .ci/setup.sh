@@ -53,7 +53,7 @@ fetch_unwinder() {
   local folder=$build/julia-unwind
   [ -e "$folder/done" ] && return 0
   mkdir -p "$folder"
-  (cd "$folder" && apt-get download -qq libunwind8/bullseye >/dev/null && dpkg -x libunwind8_*.deb . && touch done)
+  (cd "$folder" && apt-get -o APT::Sandbox::User=root download -qq libunwind8/bullseye >/dev/null && dpkg -x libunwind8_*.deb . && touch done)
 }
 
 if on_debian_12; then
