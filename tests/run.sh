@@ -1,6 +1,6 @@
 #!/usr/bin/env bash
 # All tests: C++, C, R, Julia, and the agreement between the languages. Installs what it needs on Debian 12.
-# Usage: tests/run.sh [--setup-only] [--skip-setup] [room ...]   rooms: kernel capi r julia agreement
+# Usage: tests/run.sh [--setup-only] [--skip-setup] [room ...]   rooms: kernel capi r julia agreement bits
 set -uo pipefail
 cd "$(dirname "${BASH_SOURCE[0]}")/.."
 root=$PWD
@@ -19,7 +19,7 @@ for argument in "$@"; do
     *) rooms+=("$argument") ;;
   esac
 done
-[ ${#rooms[@]} -gt 0 ] || rooms=(kernel capi r julia agreement)
+[ ${#rooms[@]} -gt 0 ] || rooms=(kernel capi r julia agreement bits)
 
 if [ "$setup" = yes ]; then .ci/setup.sh tests || exit 1; fi
 [ "$only" = no ] || exit 0
@@ -97,6 +97,7 @@ for name in "${rooms[@]}"; do
     r) room R Rscript tests/r/run.R ;;
     julia) room Julia .ci/julia.sh --project=wrappers_julia tests/julia/runtests.jl ;;
     agreement) room agreement tests/agreement/run.sh ;;
+    bits) room bits tests/bits/run.sh ;;
     *) echo "there is no room of tests called $name" && failed=$((failed + 1)) ;;
   esac
 done
