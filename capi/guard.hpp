@@ -1,8 +1,6 @@
 #pragma once
-// The one place where C++ exceptions become a status and a sentence. Every exported function that can fail is this guard
-// round one call.
-#include "numerics/strict.hpp"
-
+// The one place where C++ exceptions become a status and a sentence. Every exported function that can fail is this
+// guard round one call.
 #include <cstdint>
 #include <cstring>
 #include <new>
@@ -12,6 +10,7 @@
 
 #include "community/fault.hpp"
 #include "folkmote.h"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
@@ -19,7 +18,8 @@ inline void write_message(char* message, std::string_view sentence) noexcept {
   if (message == nullptr) return;
   std::size_t length = sentence.size() < FOLKMOTE_MESSAGE_BYTES ? sentence.size() : FOLKMOTE_MESSAGE_BYTES - 1;
   // Not in the middle of a UTF-8 character.
-  while (length < sentence.size() && length > 0 && (static_cast<unsigned char>(sentence[length]) & 0xC0U) == 0x80U) --length;
+  while (length < sentence.size() && length > 0 && (static_cast<unsigned char>(sentence[length]) & 0xC0U) == 0x80U)
+    --length;
   std::memcpy(message, sentence.data(), length);
   message[length] = '\0';
 }

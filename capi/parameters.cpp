@@ -8,7 +8,8 @@ using folkmote::needed;
 namespace folkmote {
 
 Spread read_spread(const ParameterRule& rule, int64_t count, const double* values) {
-  if (count < 1) throw BadArgument(std::string(rule.name) + " has " + std::to_string(count) + " values; give at least one.");
+  if (count < 1)
+    throw BadArgument(std::string(rule.name) + " has " + std::to_string(count) + " values; give at least one.");
   needed(values, "values");
   Spread spread(values, values + count);
   check_values(rule, spread);
@@ -110,10 +111,11 @@ folkmote_status folkmote_options_set(folkmote_options* options, int option, doub
   return guard(message, [&] {
     const OptionRule& rule = option_rule(option);
     needed(options, "options");
-    if (!(value >= rule.low && value <= rule.high) || (rule.whole && value != static_cast<double>(static_cast<int64_t>(value)))) {
+    if (!(value >= rule.low && value <= rule.high) ||
+        (rule.whole && value != static_cast<double>(static_cast<int64_t>(value)))) {
       throw folkmote::BadArgument(std::string(rule.name) + " is " + folkmote::plain_number(value) + "; it must be a " +
-                                  (rule.whole ? "whole " : "") + "number from " + folkmote::plain_number(rule.low) + " to " +
-                                  folkmote::plain_number(rule.high) + ".");
+                                  (rule.whole ? "whole " : "") + "number from " + folkmote::plain_number(rule.low) +
+                                  " to " + folkmote::plain_number(rule.high) + ".");
     }
     if (option == FOLKMOTE_TOLERANCE) options->rule.tolerance = value;
     if (option == FOLKMOTE_SWEEPS) options->rule.sweeps = static_cast<int64_t>(value);
@@ -121,7 +123,8 @@ folkmote_status folkmote_options_set(folkmote_options* options, int option, doub
   });
 }
 
-folkmote_status folkmote_options_progress(folkmote_options* options, folkmote_progress callback, void* user, char* message) {
+folkmote_status folkmote_options_progress(folkmote_options* options, folkmote_progress callback, void* user,
+                                          char* message) {
   return guard(message, [&] {
     needed(options, "options");
     if (callback == nullptr) {

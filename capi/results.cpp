@@ -21,7 +21,8 @@ folkmote::Execution execution_of(const folkmote_options* options) {
 }
 
 std::span<const double> read_array(int64_t count, const double* values, const char* name) {
-  if (count < 0) throw folkmote::BadArgument(std::string(name) + "_count is " + std::to_string(count) + "; it must be at least 0.");
+  if (count < 0)
+    throw folkmote::BadArgument(std::string(name) + "_count is " + std::to_string(count) + "; it must be at least 0.");
   if (count == 0) return {};
   return {needed(values, name), static_cast<std::size_t>(count)};
 }
@@ -43,7 +44,8 @@ constexpr int64_t most = std::numeric_limits<int64_t>::max();
 
 /// Every play has a number, and so has every row of a table with `rows_per_draw` rows for each of them.
 void check_draws(int64_t first_draw, int64_t draws, std::size_t rows_per_draw) {
-  if (first_draw < 0) throw folkmote::BadArgument("first_draw is " + std::to_string(first_draw) + "; it must be at least 0.");
+  if (first_draw < 0)
+    throw folkmote::BadArgument("first_draw is " + std::to_string(first_draw) + "; it must be at least 0.");
   if (draws < 1) throw folkmote::BadArgument("draws is " + std::to_string(draws) + "; it must be at least 1.");
   if (first_draw > most - draws) {
     throw folkmote::BadArgument("first_draw + draws is above 2^63 - 1; plays cannot be numbered that far.");
@@ -92,8 +94,8 @@ folkmote_status folkmote_turnout(const folkmote_equilibrium* equilibrium, int64_
     const auto thresholds = read_array(at_least_count, at_least, "at_least");
     check_each(obstacles, "given", -largest, largest);
     check_each(thresholds, "at_least", 0.0, 1.0);
-    *table = new folkmote_table(folkmote::turnout_table(needed(equilibrium, "equilibrium")->solution, obstacles, thresholds,
-                                                        execution_of(options)));
+    *table = new folkmote_table(folkmote::turnout_table(needed(equilibrium, "equilibrium")->solution, obstacles,
+                                                        thresholds, execution_of(options)));
   });
 }
 
@@ -111,9 +113,9 @@ folkmote_status folkmote_simulate(const folkmote_equilibrium* equilibrium, int64
       check_each({given, 1}, "given", -largest, largest);
       range.given = *given;
     }
-    *table = new folkmote_table(level == FOLKMOTE_BY_MEMBER
-                                    ? folkmote::action_table(solution, range, execution_of(options))
-                                    : folkmote::play_table(solution, range, execution_of(options)));
+    *table =
+        new folkmote_table(level == FOLKMOTE_BY_MEMBER ? folkmote::action_table(solution, range, execution_of(options))
+                                                       : folkmote::play_table(solution, range, execution_of(options)));
   });
 }
 

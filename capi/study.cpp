@@ -11,7 +11,8 @@ namespace {
 
 const folkmote::Table* table_or_none(const folkmote_table* table) { return table == nullptr ? nullptr : &table->table; }
 
-/// Edits a copy and then puts it in place: an edit that fails half-way, for want of memory, leaves the scenario as it was.
+/// Edits a copy and then puts it in place: an edit that fails half-way, for want of memory, leaves the scenario as it
+/// was.
 template <class Edit>
 void edit_whole(folkmote_scenario* scenario, const Edit& edit) {
   folkmote::Scenario edited = needed(scenario, "scenario")->scenario;
@@ -27,8 +28,9 @@ folkmote_status folkmote_study_create(const folkmote_table* members, const folkm
                                       char* message) {
   return guard(message, [&] {
     *needed(study, "study") = nullptr;
-    const folkmote::StudyTables tables{needed(members, "members")->table, table_or_none(links), table_or_none(broadcasts),
-                                       table_or_none(gatherings), table_or_none(communities), mutual != 0};
+    const folkmote::StudyTables tables{needed(members, "members")->table, table_or_none(links),
+                                       table_or_none(broadcasts),         table_or_none(gatherings),
+                                       table_or_none(communities),        mutual != 0};
     *study = new folkmote_study(std::make_shared<const folkmote::Study>(folkmote::make_study(tables)));
   });
 }
@@ -69,27 +71,31 @@ folkmote_status folkmote_scenario_thin_links(folkmote_scenario* scenario, double
   return guard(message, [&] { edit_whole(scenario, [&](auto& edited) { edited.thin_links(share, seed); }); });
 }
 
-folkmote_status folkmote_scenario_broadcast(folkmote_scenario* scenario, const folkmote_table* audience, double precision,
-                                            char* message) {
-  return guard(message, [&] { edit_whole(scenario, [&](auto& edited) { edited.broadcast(table_or_none(audience), precision); }); });
+folkmote_status folkmote_scenario_broadcast(folkmote_scenario* scenario, const folkmote_table* audience,
+                                            double precision, char* message) {
+  return guard(message, [&] {
+    edit_whole(scenario, [&](auto& edited) { edited.broadcast(table_or_none(audience), precision); });
+  });
 }
 
-folkmote_status folkmote_scenario_gathering(folkmote_scenario* scenario, const folkmote_table* audience, char* message) {
-  return guard(message, [&] { edit_whole(scenario, [&](auto& edited) { edited.gathering(table_or_none(audience)); }); });
+folkmote_status folkmote_scenario_gathering(folkmote_scenario* scenario, const folkmote_table* audience,
+                                            char* message) {
+  return guard(message,
+               [&] { edit_whole(scenario, [&](auto& edited) { edited.gathering(table_or_none(audience)); }); });
 }
 
 folkmote_status folkmote_scenario_shift_cost(folkmote_scenario* scenario, const folkmote_table* audience, double by,
                                              char* message) {
-  return guard(message, [&] { edit_whole(scenario, [&](auto& edited) { edited.shift_cost(table_or_none(audience), by); }); });
+  return guard(message,
+               [&] { edit_whole(scenario, [&](auto& edited) { edited.shift_cost(table_or_none(audience), by); }); });
 }
 
 folkmote_status folkmote_scenario_set_beliefs(folkmote_scenario* scenario, int parameter, int64_t count,
                                               const double* values, char* message) {
   return guard(message, [&] {
     const folkmote::ParameterRule& rule = folkmote::parameter_rule(parameter);
-    edit_whole(scenario, [&](auto& edited) {
-      edited.set_beliefs(rule.parameter, folkmote::read_spread(rule, count, values));
-    });
+    edit_whole(scenario,
+               [&](auto& edited) { edited.set_beliefs(rule.parameter, folkmote::read_spread(rule, count, values)); });
   });
 }
 

@@ -19,7 +19,8 @@ template <class T>
 const std::vector<T>& values_at(const folkmote_table* table, int64_t column, const char* type) {
   const folkmote::Column& found = column_at(table, column);
   const auto* values = std::get_if<std::vector<T>>(&found.values);
-  if (values == nullptr) throw folkmote::BadArgument("column '" + found.name + "' is not " + type + "; ask for its own type.");
+  if (values == nullptr)
+    throw folkmote::BadArgument("column '" + found.name + "' is not " + type + "; ask for its own type.");
   return *values;
 }
 
@@ -55,7 +56,8 @@ folkmote_status folkmote_table_create(int64_t rows, folkmote_table** table, char
 
 void folkmote_table_destroy(folkmote_table* table) { delete table; }
 
-folkmote_status folkmote_table_add_text(folkmote_table* table, const char* name, const char* const* values, char* message) {
+folkmote_status folkmote_table_add_text(folkmote_table* table, const char* name, const char* const* values,
+                                        char* message) {
   return guard(message, [&] {
     needed_values(table, values);
     std::vector<folkmote::Text> texts(table->table.rows());
@@ -66,7 +68,8 @@ folkmote_status folkmote_table_add_text(folkmote_table* table, const char* name,
   });
 }
 
-folkmote_status folkmote_table_add_integer(folkmote_table* table, const char* name, const int64_t* values, char* message) {
+folkmote_status folkmote_table_add_integer(folkmote_table* table, const char* name, const int64_t* values,
+                                           char* message) {
   return guard(message, [&] { add_numbers<std::int64_t>(table, name, values); });
 }
 
@@ -92,7 +95,8 @@ int folkmote_table_column_type(const folkmote_table* table, int64_t column) {
   return static_cast<int>(table->table.columns()[static_cast<std::size_t>(column)].values.index()) + 1;
 }
 
-folkmote_status folkmote_table_get_text(const folkmote_table* table, int64_t column, const char** values, char* message) {
+folkmote_status folkmote_table_get_text(const folkmote_table* table, int64_t column, const char** values,
+                                        char* message) {
   return guard(message, [&] {
     const auto& texts = values_at<folkmote::Text>(table, column, "text");
     needed_values(table, values);
@@ -100,7 +104,8 @@ folkmote_status folkmote_table_get_text(const folkmote_table* table, int64_t col
   });
 }
 
-folkmote_status folkmote_table_get_integer(const folkmote_table* table, int64_t column, int64_t* values, char* message) {
+folkmote_status folkmote_table_get_integer(const folkmote_table* table, int64_t column, int64_t* values,
+                                           char* message) {
   return guard(message, [&] { copy_numbers<std::int64_t>(table, column, values, "integer"); });
 }
 

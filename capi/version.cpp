@@ -20,24 +20,38 @@ int64_t folkmote_live_handles(void) { return folkmote::live_handles().load(); }
 
 const char* folkmote_status_name(int status) {
   switch (status) {
-    case FOLKMOTE_OK: return "FOLKMOTE_OK";
-    case FOLKMOTE_BAD_ARGUMENT: return "FOLKMOTE_BAD_ARGUMENT";
-    case FOLKMOTE_BAD_DATA: return "FOLKMOTE_BAD_DATA";
-    case FOLKMOTE_OUT_OF_MEMORY: return "FOLKMOTE_OUT_OF_MEMORY";
-    case FOLKMOTE_CANCELLED: return "FOLKMOTE_CANCELLED";
-    case FOLKMOTE_INTERNAL: return "FOLKMOTE_INTERNAL";
-    default: return "unknown status";
+    case FOLKMOTE_OK:
+      return "FOLKMOTE_OK";
+    case FOLKMOTE_BAD_ARGUMENT:
+      return "FOLKMOTE_BAD_ARGUMENT";
+    case FOLKMOTE_BAD_DATA:
+      return "FOLKMOTE_BAD_DATA";
+    case FOLKMOTE_OUT_OF_MEMORY:
+      return "FOLKMOTE_OUT_OF_MEMORY";
+    case FOLKMOTE_CANCELLED:
+      return "FOLKMOTE_CANCELLED";
+    case FOLKMOTE_INTERNAL:
+      return "FOLKMOTE_INTERNAL";
+    default:
+      return "unknown status";
   }
 }
 
 const char* folkmote_status_text(int status) {
   switch (status) {
-    case FOLKMOTE_OK: return "done";
-    case FOLKMOTE_BAD_ARGUMENT: return "an argument is missing, out of range, or of the wrong length";
-    case FOLKMOTE_BAD_DATA: return "a table breaks a rule of the study data";
-    case FOLKMOTE_OUT_OF_MEMORY: return "there is not enough memory";
-    case FOLKMOTE_CANCELLED: return "the run was cancelled by the caller";
-    case FOLKMOTE_INTERNAL: return "a defect of the library";
-    default: return "unknown status";
+    case FOLKMOTE_OK:
+      return "done";
+    case FOLKMOTE_BAD_ARGUMENT:
+      return "an argument is missing, out of range, or of the wrong length";
+    case FOLKMOTE_BAD_DATA:
+      return "a table breaks a rule of the study data";
+    case FOLKMOTE_OUT_OF_MEMORY:
+      return "there is not enough memory";
+    case FOLKMOTE_CANCELLED:
+      return "the run was cancelled by the caller";
+    case FOLKMOTE_INTERNAL:
+      return "a defect of the library";
+    default:
+      return "unknown status";
   }
 }

@@ -1,6 +1,6 @@
 #!/usr/bin/env bash
 # All tests: C++, C, R, Julia, and the agreement between the languages. Installs what it needs on Debian 12.
-# Usage: tests/run.sh [--setup-only] [--skip-setup] [room ...]   rooms: kernel capi r julia agreement bits
+# Usage: tests/run.sh [--setup-only] [--skip-setup] [room ...]   rooms: format kernel capi r julia agreement bits
 set -uo pipefail
 cd "$(dirname "${BASH_SOURCE[0]}")/.."
 root=$PWD
@@ -19,7 +19,7 @@ for argument in "$@"; do
     *) rooms+=("$argument") ;;
   esac
 done
-[ ${#rooms[@]} -gt 0 ] || rooms=(kernel capi r julia agreement bits)
+[ ${#rooms[@]} -gt 0 ] || rooms=(format kernel capi r julia agreement bits)
 
 if [ "$setup" = yes ]; then .ci/setup.sh tests || exit 1; fi
 [ "$only" = no ] || exit 0
@@ -74,6 +74,10 @@ kernel() {
   return $code
 }
 
+format() {
+  if .ci/format.sh; then echo "format: 1 passed, 0 failed"; else echo "format: 0 passed, 1 failed" && return 1; fi
+}
+
 r_package() {
   wrappers_r/bundle.sh && mkdir -p "$FOLKMOTE_R_LIBRARY" &&
     R CMD INSTALL --no-test-load --library="$FOLKMOTE_R_LIBRARY" "$FOLKMOTE_BUILD"/r/folkmote_*.tar.gz
@@ -92,6 +96,7 @@ fi
 
 for name in "${rooms[@]}"; do
   case $name in
+    format) room format format ;;
     kernel) room kernel kernel ;;
     capi) room capi tests/capi/run.sh ;;
     r) room R Rscript tests/r/run.R ;;

@@ -93,7 +93,7 @@ extern "C" {
  *   version         "major.minor.patch"; the soname carries the major version
  *   stream version  goes up whenever any seeded draw changes: results of different stream versions are not to be merged
  *   message bytes   what every `message` below must have room for, the final zero byte included */
-FOLKMOTE_API const char *folkmote_version(void);
+FOLKMOTE_API const char* folkmote_version(void);
 FOLKMOTE_API int folkmote_stream_version(void);
 FOLKMOTE_API size_t folkmote_message_bytes(void);
 
@@ -115,8 +115,8 @@ typedef enum folkmote_status {
 /* Name ("FOLKMOTE_BAD_DATA") and plain text ("a table breaks a rule of the study data") of a status; "unknown status"
  * for every other number. Wrappers build the class of their conditions from the name. The texts are for people and may
  * be reworded; the names and numbers never change. */
-FOLKMOTE_API const char *folkmote_status_name(int status);
-FOLKMOTE_API const char *folkmote_status_text(int status);
+FOLKMOTE_API const char* folkmote_status_name(int status);
+FOLKMOTE_API const char* folkmote_status_text(int status);
 
 /* ---- Tables: every input and every result -------------------------------------------------------------- */
 
@@ -132,8 +132,8 @@ typedef enum folkmote_type {
 /* A table of `rows` >= 0 rows and no columns yet.
  *   rows   every column that is added must have this many values
  *   table  out: the new table; the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_table_create(int64_t rows, folkmote_table **table, char *message);
-FOLKMOTE_API void folkmote_table_destroy(folkmote_table *table);
+FOLKMOTE_API folkmote_status folkmote_table_create(int64_t rows, folkmote_table** table, char* message);
+FOLKMOTE_API void folkmote_table_destroy(folkmote_table* table);
 
 /* Add a column at the end.
  *   name    not empty, not yet in the table (names differ by case); copied
@@ -142,36 +142,36 @@ FOLKMOTE_API void folkmote_table_destroy(folkmote_table *table);
  * FOLKMOTE_BAD_ARGUMENT, and the table as it was, for a name that is empty or taken.
  * Ids (community, member, listener, speaker, broadcast, gathering) may be of any type: they are matched by
  * label, so that 7 and "7" are one member; a REAL id must be a whole number of size at most 2^53. */
-FOLKMOTE_API folkmote_status folkmote_table_add_text(folkmote_table *table, const char *name,
-                                                     const char *const *values, char *message);
-FOLKMOTE_API folkmote_status folkmote_table_add_integer(folkmote_table *table, const char *name,
-                                                        const int64_t *values, char *message);
-FOLKMOTE_API folkmote_status folkmote_table_add_real(folkmote_table *table, const char *name,
-                                                     const double *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_table_add_text(folkmote_table* table, const char* name, const char* const* values,
+                                                     char* message);
+FOLKMOTE_API folkmote_status folkmote_table_add_integer(folkmote_table* table, const char* name, const int64_t* values,
+                                                        char* message);
+FOLKMOTE_API folkmote_status folkmote_table_add_real(folkmote_table* table, const char* name, const double* values,
+                                                     char* message);
 
 /* Shape and columns. `column` runs from 0 to columns - 1, in the order in which columns were added; outside it, the
  * name is NULL and the type (a folkmote_type) is 0. A NULL table has neither rows nor columns. Result tables name their
  * columns as written with the function that makes them; read them by name, since later versions may add columns. */
-FOLKMOTE_API int64_t folkmote_table_rows(const folkmote_table *table);
-FOLKMOTE_API int64_t folkmote_table_columns(const folkmote_table *table);
-FOLKMOTE_API const char *folkmote_table_column_name(const folkmote_table *table, int64_t column);
-FOLKMOTE_API int folkmote_table_column_type(const folkmote_table *table, int64_t column);
+FOLKMOTE_API int64_t folkmote_table_rows(const folkmote_table* table);
+FOLKMOTE_API int64_t folkmote_table_columns(const folkmote_table* table);
+FOLKMOTE_API const char* folkmote_table_column_name(const folkmote_table* table, int64_t column);
+FOLKMOTE_API int folkmote_table_column_type(const folkmote_table* table, int64_t column);
 
 /* Copy one column out.
  *   column  from 0; FOLKMOTE_BAD_ARGUMENT when there is none, or when it is of another type: nothing is converted
  *   values  out: room for one element per row, in row order. NULL is allowed when the table has no rows.
  * Text pointers belong to the table and stay valid until it is destroyed, also when columns are added. */
-FOLKMOTE_API folkmote_status folkmote_table_get_text(const folkmote_table *table, int64_t column,
-                                                     const char **values, char *message);
-FOLKMOTE_API folkmote_status folkmote_table_get_integer(const folkmote_table *table, int64_t column,
-                                                        int64_t *values, char *message);
-FOLKMOTE_API folkmote_status folkmote_table_get_real(const folkmote_table *table, int64_t column, double *values,
-                                                     char *message);
+FOLKMOTE_API folkmote_status folkmote_table_get_text(const folkmote_table* table, int64_t column, const char** values,
+                                                     char* message);
+FOLKMOTE_API folkmote_status folkmote_table_get_integer(const folkmote_table* table, int64_t column, int64_t* values,
+                                                        char* message);
+FOLKMOTE_API folkmote_status folkmote_table_get_real(const folkmote_table* table, int64_t column, double* values,
+                                                     char* message);
 
 /* 64-bit digest of rows, names, types and values (FNV-1a over a canonical little-endian form), equal in every
  * language and on every machine for equal tables. Order of columns and rows counts; -0 equals 0, and all NaN are
  * one. It finds accidental differences and is no protection against intent. NULL gives 0. */
-FOLKMOTE_API uint64_t folkmote_table_digest(const folkmote_table *table);
+FOLKMOTE_API uint64_t folkmote_table_digest(const folkmote_table* table);
 
 /* ---- Study: who listens to whom ------------------------------------------------------------------------ */
 
@@ -193,19 +193,17 @@ typedef struct folkmote_study folkmote_study;
  * duplicate link or member (with `mutual`, also a contact listed in both directions), a member of another community,
  * a missing value where none may be, a value out of range or not finite, a wrong type, an empty community.
  *   study  out: the new study; the caller destroys it. NULL on failure. It keeps nothing of the tables' memory. */
-FOLKMOTE_API folkmote_status folkmote_study_create(const folkmote_table *members, const folkmote_table *links,
-                                                   const folkmote_table *broadcasts,
-                                                   const folkmote_table *gatherings,
-                                                   const folkmote_table *communities, int mutual,
-                                                   folkmote_study **study, char *message);
-FOLKMOTE_API void folkmote_study_destroy(folkmote_study *study);
+FOLKMOTE_API folkmote_status folkmote_study_create(const folkmote_table* members, const folkmote_table* links,
+                                                   const folkmote_table* broadcasts, const folkmote_table* gatherings,
+                                                   const folkmote_table* communities, int mutual,
+                                                   folkmote_study** study, char* message);
+FOLKMOTE_API void folkmote_study_destroy(folkmote_study* study);
 
 /* One row per community, in study order: community (as `members` has it), members, links, broadcasts, gatherings,
  * hears_mean and hears_most (members heard, gatherings included), turnout_observed (weighted share of those observed;
  * NaN: none), turnout_missing.
  *   table  out: the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_study_summary(const folkmote_study *study, folkmote_table **table,
-                                                    char *message);
+FOLKMOTE_API folkmote_status folkmote_study_summary(const folkmote_study* study, folkmote_table** table, char* message);
 
 /* ---- Parameters of beliefs and payoff ------------------------------------------------------------------ */
 
@@ -226,8 +224,8 @@ typedef enum folkmote_parameter {
  *   low, high            out: the ends; infinite where there is none
  *   low_open, high_open  out: 1 where the end itself is not allowed, else 0
  * FOLKMOTE_BAD_ARGUMENT for an unknown parameter. */
-FOLKMOTE_API folkmote_status folkmote_parameter_bounds(int parameter, double *low, double *high, int *low_open,
-                                                       int *high_open, char *message);
+FOLKMOTE_API folkmote_status folkmote_parameter_bounds(int parameter, double* low, double* high, int* low_open,
+                                                       int* high_open, char* message);
 
 /* What members believe before and learn from their signals: parameters 1 to 5. */
 typedef struct folkmote_beliefs folkmote_beliefs;
@@ -235,16 +233,16 @@ typedef struct folkmote_beliefs folkmote_beliefs;
 /* Empty beliefs: prior mean and precision must be set before solving, signal precision too unless `members`
  * has that column. A member or link column, where present, overrides these values.
  *   beliefs  out: the new beliefs; the caller destroys them. They fit any study. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_beliefs_create(folkmote_beliefs **beliefs, char *message);
-FOLKMOTE_API void folkmote_beliefs_destroy(folkmote_beliefs *beliefs);
+FOLKMOTE_API folkmote_status folkmote_beliefs_create(folkmote_beliefs** beliefs, char* message);
+FOLKMOTE_API void folkmote_beliefs_destroy(folkmote_beliefs* beliefs);
 
 /* Set a parameter numbered 1 to 5, or set it anew.
  *   count   1, the number of communities, or the number of members: as fine as folkmote_parameter allows. Whether
  *           it fits the study is checked when solving (FOLKMOTE_BAD_ARGUMENT, with the numbers that would fit).
  *   values  `count` of them, in study order for communities, in the order of `members` for members; copied
  * FOLKMOTE_BAD_ARGUMENT, and the old values kept, when a value is NaN or out of range: the message says which. */
-FOLKMOTE_API folkmote_status folkmote_beliefs_set(folkmote_beliefs *beliefs, int parameter, int64_t count,
-                                                  const double *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_beliefs_set(folkmote_beliefs* beliefs, int parameter, int64_t count,
+                                                  const double* values, char* message);
 
 /* What acting pays: a kind, and parameters 16 to 18. */
 typedef struct folkmote_payoff folkmote_payoff;
@@ -257,13 +255,13 @@ typedef enum folkmote_payoff_kind {
 /* A payoff with benefit 1, cost 0 and the community as reach.
  *   kind    a folkmote_payoff_kind; FOLKMOTE_BAD_ARGUMENT for other numbers
  *   payoff  out: the new payoff; the caller destroys it. It fits any study. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_payoff_create(int kind, folkmote_payoff **payoff, char *message);
-FOLKMOTE_API void folkmote_payoff_destroy(folkmote_payoff *payoff);
+FOLKMOTE_API folkmote_status folkmote_payoff_create(int kind, folkmote_payoff** payoff, char* message);
+FOLKMOTE_API void folkmote_payoff_destroy(folkmote_payoff* payoff);
 
 /* Set a parameter numbered 16 to 18; `count` and `values` as in folkmote_beliefs_set. A member column `benefit` or
  * `cost`, where present, overrides these values. */
-FOLKMOTE_API folkmote_status folkmote_payoff_set(folkmote_payoff *payoff, int parameter, int64_t count,
-                                                 const double *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_payoff_set(folkmote_payoff* payoff, int parameter, int64_t count,
+                                                 const double* values, char* message);
 
 /* ---- Options of a run ---------------------------------------------------------------------------------- */
 
@@ -281,14 +279,13 @@ typedef enum folkmote_option {
 
 /* Options at their defaults, without progress.
  *   options  out: the new options; the caller destroys them. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_options_create(folkmote_options **options, char *message);
-FOLKMOTE_API void folkmote_options_destroy(folkmote_options *options);
+FOLKMOTE_API folkmote_status folkmote_options_create(folkmote_options** options, char* message);
+FOLKMOTE_API void folkmote_options_destroy(folkmote_options* options);
 /* Set one option.
  *   option  a folkmote_option; FOLKMOTE_BAD_ARGUMENT for other numbers
  *   value   within the range given with the option, ends included; whole for sweeps and threads
  * FOLKMOTE_BAD_ARGUMENT, and the old value kept, otherwise. */
-FOLKMOTE_API folkmote_status folkmote_options_set(folkmote_options *options, int option, double value,
-                                                  char *message);
+FOLKMOTE_API folkmote_status folkmote_options_set(folkmote_options* options, int option, double value, char* message);
 
 /* Progress and cancel. The callback runs on the thread that called the library, about ten times a second and
  * at the end, with `done` of `total` units of work and the caller's `user`. Non-zero cancels: the call
@@ -296,13 +293,13 @@ FOLKMOTE_API folkmote_status folkmote_options_set(folkmote_options *options, int
  *   done, total  0 <= done <= total. A unit is a community; a call of several stages counts each of them from 0.
  *   user         as given to folkmote_options_progress
  * It must not destroy the options, nor start a run with them. It is not called again once it has cancelled. */
-typedef int (*folkmote_progress)(int64_t done, int64_t total, void *user);
+typedef int (*folkmote_progress)(int64_t done, int64_t total, void* user);
 
 /* Set or replace the callback.
  *   callback  NULL: none any more
  *   user      handed to the callback untouched; may be NULL; must live as long as runs with these options */
-FOLKMOTE_API folkmote_status folkmote_options_progress(folkmote_options *options, folkmote_progress callback,
-                                                       void *user, char *message);
+FOLKMOTE_API folkmote_status folkmote_options_progress(folkmote_options* options, folkmote_progress callback,
+                                                       void* user, char* message);
 
 /* ---- Equilibrium --------------------------------------------------------------------------------------- */
 
@@ -320,47 +317,42 @@ typedef enum folkmote_level { FOLKMOTE_BY_COMMUNITY = 1, FOLKMOTE_BY_MEMBER = 2 
  *   equilibrium             out: the caller destroys it. NULL on failure.
  * FOLKMOTE_BAD_ARGUMENT when a needed belief is not set or has a number of values that does not fit the study. That a
  * community is not solved within the tolerance is no failure: its verdict says so. */
-FOLKMOTE_API folkmote_status folkmote_equilibrium_create(const folkmote_study *study,
-                                                         const folkmote_beliefs *beliefs,
-                                                         const folkmote_payoff *payoff,
-                                                         const folkmote_options *options,
-                                                         folkmote_equilibrium **equilibrium, char *message);
-FOLKMOTE_API void folkmote_equilibrium_destroy(folkmote_equilibrium *equilibrium);
+FOLKMOTE_API folkmote_status folkmote_equilibrium_create(const folkmote_study* study, const folkmote_beliefs* beliefs,
+                                                         const folkmote_payoff* payoff, const folkmote_options* options,
+                                                         folkmote_equilibrium** equilibrium, char* message);
+FOLKMOTE_API void folkmote_equilibrium_destroy(folkmote_equilibrium* equilibrium);
 
 /* BY_COMMUNITY: community, verdict, contraction_bound, turnout_least, turnout_greatest, width, iterations.
  * BY_MEMBER, in the order of `members`: community, member, cutoff_least, cutoff_greatest, chance_least,
  * chance_greatest (chance of acting before anything is known).
  * Verdicts: "proved unique" (contraction_bound < 1), "bracketed" (both ends agree within the tolerance, not
  * proved), "several" (the ends are proved to differ), "not converged" (width tells the enclosure reached).
- * `contraction_bound`, rounded outward: max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)); where that is 1 or more and
- * the ends agree, the weighted sup-norm bound on the finished enclosure, if smaller. Below 1 it proves one equilibrium.
- * `turnout_least` goes with the least cutoffs and `turnout_greatest` with the greatest; `width` is the largest
- * distance between the two cutoffs of a member; `iterations` are those of the slower end. Turnout and chances are
- * shares in 0..1, weighted by the column `weight`; cutoffs are in the units of the obstacle.
- *   level  a folkmote_level; FOLKMOTE_BAD_ARGUMENT for other numbers
- *   table  out: the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_equilibrium_table(const folkmote_equilibrium *equilibrium, int level,
-                                                        folkmote_table **table, char *message);
+ * `contraction_bound`, rounded outward: max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)); where that is 1 or more
+ * and the ends agree, the weighted sup-norm bound on the finished enclosure, if smaller. Below 1 it proves one
+ * equilibrium. `turnout_least` goes with the least cutoffs and `turnout_greatest` with the greatest; `width` is the
+ * largest distance between the two cutoffs of a member; `iterations` are those of the slower end. Turnout and chances
+ * are shares in 0..1, weighted by the column `weight`; cutoffs are in the units of the obstacle. level  a
+ * folkmote_level; FOLKMOTE_BAD_ARGUMENT for other numbers table  out: the caller destroys it. NULL on failure. */
+FOLKMOTE_API folkmote_status folkmote_equilibrium_table(const folkmote_equilibrium* equilibrium, int level,
+                                                        folkmote_table** table, char* message);
 
 /* Digest of everything the equilibrium was solved from: study, beliefs, payoff, tolerance, sweeps. For provenance
  * records and for merging shards: equal digests, seeds and stream versions mean equal draws. 0 for NULL, and when
  * there is not enough memory to compute it. */
-FOLKMOTE_API uint64_t folkmote_equilibrium_digest(const folkmote_equilibrium *equilibrium);
+FOLKMOTE_API uint64_t folkmote_equilibrium_digest(const folkmote_equilibrium* equilibrium);
 
 /* Analytic turnout. Without `given`: one row per community (and value of `at_least`): community, [at_least,]
  * turnout_least, turnout_greatest, sd_least, sd_greatest [, chance_least, chance_greatest, chance_method].
  * With `given_count` values of the obstacle theta: one row per community and theta (and at_least), with the
  * column given after community. `at_least_count` thresholds in [0, 1] of turnout. chance_method is "exact" (no shared
- * information, equal weights, at most 500 members) or "normal approximation" (given theta, shared information included).
- *   given     `given_count` finite values, in the units of the obstacle; NULL when there are none
- *   at_least  `at_least_count` values; NULL when there are none. A chance is that of turnout >= the threshold.
- *   options   threads and progress; NULL: the defaults
- *   table     out: rows by community in study order, then `given`, then `at_least`, as the caller ordered them;
- *             the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_turnout(const folkmote_equilibrium *equilibrium, int64_t given_count,
-                                              const double *given, int64_t at_least_count, const double *at_least,
-                                              const folkmote_options *options, folkmote_table **table,
-                                              char *message);
+ * information, equal weights, at most 500 members) or "normal approximation" (given theta, shared information
+ * included). given     `given_count` finite values, in the units of the obstacle; NULL when there are none at_least
+ * `at_least_count` values; NULL when there are none. A chance is that of turnout >= the threshold. options   threads
+ * and progress; NULL: the defaults table     out: rows by community in study order, then `given`, then `at_least`, as
+ * the caller ordered them; the caller destroys it. NULL on failure. */
+FOLKMOTE_API folkmote_status folkmote_turnout(const folkmote_equilibrium* equilibrium, int64_t given_count,
+                                              const double* given, int64_t at_least_count, const double* at_least,
+                                              const folkmote_options* options, folkmote_table** table, char* message);
 
 /* Seeded plays, replications first_draw .. first_draw + draws - 1, `first_draw` >= 0 counting from 0 and `draws` >= 1;
  * any split of the range gives the same rows. `given`:
@@ -373,10 +365,9 @@ FOLKMOTE_API folkmote_status folkmote_turnout(const folkmote_equilibrium *equili
  *   options     threads and progress; NULL: the defaults
  *   table       out: actions are 1 (acts) and 0; the caller destroys it. NULL on failure.
  * FOLKMOTE_OUT_OF_MEMORY when the rows do not fit: ask for fewer draws at a time, in shards. */
-FOLKMOTE_API folkmote_status folkmote_simulate(const folkmote_equilibrium *equilibrium, int64_t first_draw,
-                                               int64_t draws, uint64_t seed, const double *given, int level,
-                                               const folkmote_options *options, folkmote_table **table,
-                                               char *message);
+FOLKMOTE_API folkmote_status folkmote_simulate(const folkmote_equilibrium* equilibrium, int64_t first_draw,
+                                               int64_t draws, uint64_t seed, const double* given, int level,
+                                               const folkmote_options* options, folkmote_table** table, char* message);
 
 /* ---- Scenarios and counterfactuals --------------------------------------------------------------------- */
 
@@ -387,59 +378,57 @@ typedef struct folkmote_scenario folkmote_scenario;
  * against the study as the edits before it left it.
  *   study     the baseline; it is not changed, and may be destroyed
  *   scenario  out: no edits yet; the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_scenario_create(const folkmote_study *study, folkmote_scenario **scenario,
-                                                      char *message);
-FOLKMOTE_API void folkmote_scenario_destroy(folkmote_scenario *scenario);
+FOLKMOTE_API folkmote_status folkmote_scenario_create(const folkmote_study* study, folkmote_scenario** scenario,
+                                                      char* message);
+FOLKMOTE_API void folkmote_scenario_destroy(folkmote_scenario* scenario);
 
 /* Add or cut the links of a table as in folkmote_study_create. Cutting a link that is not there, or adding one that is,
  * is FOLKMOTE_BAD_DATA. `links` NULL in cut_links cuts every link.
  *   links   community, listener, speaker; add_links takes relay_precision too
  *   mutual  non-zero: each row stands for both directions, and both must be there to cut, or absent to add
  * A table with one row at fault is refused as a whole. */
-FOLKMOTE_API folkmote_status folkmote_scenario_add_links(folkmote_scenario *scenario, const folkmote_table *links,
-                                                         int mutual, char *message);
-FOLKMOTE_API folkmote_status folkmote_scenario_cut_links(folkmote_scenario *scenario, const folkmote_table *links,
-                                                         int mutual, char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_add_links(folkmote_scenario* scenario, const folkmote_table* links,
+                                                         int mutual, char* message);
+FOLKMOTE_API folkmote_status folkmote_scenario_cut_links(folkmote_scenario* scenario, const folkmote_table* links,
+                                                         int mutual, char* message);
 
-/* Lose a random `share` in [0, 1] of the contacts of each community: the nearest whole number of them, chosen by the seed.
- * A contact is a pair with a link in either direction; both directions go together.
- *   share  FOLKMOTE_BAD_ARGUMENT outside [0, 1]; 0 changes nothing, 1 cuts every link
- *   seed   any 64 bits; every set of that many contacts of a community is equally likely */
-FOLKMOTE_API folkmote_status folkmote_scenario_thin_links(folkmote_scenario *scenario, double share, uint64_t seed,
-                                                          char *message);
+/* Lose a random `share` in [0, 1] of the contacts of each community: the nearest whole number of them, chosen by the
+ * seed. A contact is a pair with a link in either direction; both directions go together. share  FOLKMOTE_BAD_ARGUMENT
+ * outside [0, 1]; 0 changes nothing, 1 cuts every link seed   any 64 bits; every set of that many contacts of a
+ * community is equally likely */
+FOLKMOTE_API folkmote_status folkmote_scenario_thin_links(folkmote_scenario* scenario, double share, uint64_t seed,
+                                                          char* message);
 
 /* One more broadcast per community with the given precision (> 0, finite), or one more gathering. `audience`: NULL for
  * everyone, or a table with community (all of its members), or with community and member.
  * A community that the audience leaves out gets none. A row that stands twice is FOLKMOTE_BAD_DATA. Members of a
  * gathering hear each other exactly, whatever links they have. */
-FOLKMOTE_API folkmote_status folkmote_scenario_broadcast(folkmote_scenario *scenario,
-                                                         const folkmote_table *audience, double precision,
-                                                         char *message);
-FOLKMOTE_API folkmote_status folkmote_scenario_gathering(folkmote_scenario *scenario,
-                                                         const folkmote_table *audience, char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_broadcast(folkmote_scenario* scenario, const folkmote_table* audience,
+                                                         double precision, char* message);
+FOLKMOTE_API folkmote_status folkmote_scenario_gathering(folkmote_scenario* scenario, const folkmote_table* audience,
+                                                         char* message);
 
 /* Add `by` (finite; in units of the benefit) to the cost of the `audience` (as above), on top of what the payoff or a
  * column gives. A negative number makes acting cheaper. Shifts add up. */
-FOLKMOTE_API folkmote_status folkmote_scenario_shift_cost(folkmote_scenario *scenario,
-                                                          const folkmote_table *audience, double by, char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_shift_cost(folkmote_scenario* scenario, const folkmote_table* audience,
+                                                          double by, char* message);
 
 /* Replace a belief parameter (1 to 5), overriding any member or link column of that name. `count` and `values` as in
  * folkmote_beliefs_set, but the number is checked against the study at once. */
-FOLKMOTE_API folkmote_status folkmote_scenario_set_beliefs(folkmote_scenario *scenario, int parameter,
-                                                           int64_t count, const double *values, char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_set_beliefs(folkmote_scenario* scenario, int parameter, int64_t count,
+                                                           const double* values, char* message);
 
 /* Extend hearing to `hops` (1..64) links: original reports are forwarded, each along the most precise path
  * (relay variances add along it), and nobody is counted twice. A gathering is one exact hop. 1 is hearing as the
  * study has it; of several such edits the last one counts. */
-FOLKMOTE_API folkmote_status folkmote_scenario_forward_reports(folkmote_scenario *scenario, int hops,
-                                                               char *message);
+FOLKMOTE_API folkmote_status folkmote_scenario_forward_reports(folkmote_scenario* scenario, int hops, char* message);
 
 /* The edited study, as one of its own, and a digest of baseline and edits (0 for NULL, and when there is not enough
  * memory to compute it). Belief overrides of folkmote_scenario_set_beliefs are no part of the study.
  *   study  out: the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_scenario_study(const folkmote_scenario *scenario, folkmote_study **study,
-                                                     char *message);
-FOLKMOTE_API uint64_t folkmote_scenario_digest(const folkmote_scenario *scenario);
+FOLKMOTE_API folkmote_status folkmote_scenario_study(const folkmote_scenario* scenario, folkmote_study** study,
+                                                     char* message);
+FOLKMOTE_API uint64_t folkmote_scenario_digest(const folkmote_scenario* scenario);
 
 /* Prospective counterfactual: the scenario's equilibrium beside the baseline's, analytic means at both ends and `draws`
  * (0, or >= 2) seeded plays on common random numbers. The scenario must come from the equilibrium's study.
@@ -456,10 +445,10 @@ FOLKMOTE_API uint64_t folkmote_scenario_digest(const folkmote_scenario *scenario
  *   draws, seed  the plays are those of folkmote_simulate from replication 0: both sides share every draw
  *   options      threads and progress; NULL: the defaults. Its stages are solving, then comparing block by block.
  *   table        out: the caller destroys it. NULL on failure. */
-FOLKMOTE_API folkmote_status folkmote_counterfactual(const folkmote_equilibrium *equilibrium,
-                                                     const folkmote_scenario *scenario, int64_t draws,
-                                                     uint64_t seed, const folkmote_options *options,
-                                                     folkmote_table **table, char *message);
+FOLKMOTE_API folkmote_status folkmote_counterfactual(const folkmote_equilibrium* equilibrium,
+                                                     const folkmote_scenario* scenario, int64_t draws, uint64_t seed,
+                                                     const folkmote_options* options, folkmote_table** table,
+                                                     char* message);
 
 #ifdef __cplusplus
 }

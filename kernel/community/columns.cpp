@@ -13,9 +13,12 @@ constexpr double largest_whole = 9007199254740992.0;  // 2^53
 
 const char* type_name(const Values& values) {
   switch (values.index()) {
-    case 0: return "text";
-    case 1: return "integer";
-    default: return "real";
+    case 0:
+      return "text";
+    case 1:
+      return "integer";
+    default:
+      return "real";
   }
 }
 
@@ -29,25 +32,32 @@ struct ReadLabels {
   std::vector<std::string> operator()(const std::vector<Text>& values) const {
     std::vector<std::string> labels(values.size());
     for (std::size_t r = 0; r < values.size(); ++r) {
-      if (values[r] && !values[r]->empty()) labels[r] = *values[r];
-      else missing.add(r);
+      if (values[r] && !values[r]->empty())
+        labels[r] = *values[r];
+      else
+        missing.add(r);
     }
     return labels;
   }
   std::vector<std::string> operator()(const std::vector<std::int64_t>& values) const {
     std::vector<std::string> labels(values.size());
     for (std::size_t r = 0; r < values.size(); ++r) {
-      if (values[r] != missing_integer) labels[r] = std::to_string(values[r]);
-      else missing.add(r);
+      if (values[r] != missing_integer)
+        labels[r] = std::to_string(values[r]);
+      else
+        missing.add(r);
     }
     return labels;
   }
   std::vector<std::string> operator()(const std::vector<double>& values) const {
     std::vector<std::string> labels(values.size());
     for (std::size_t r = 0; r < values.size(); ++r) {
-      if (std::isnan(values[r])) missing.add(r);
-      else if (is_whole(values[r])) labels[r] = std::to_string(static_cast<std::int64_t>(values[r]));
-      else broken.add(r);
+      if (std::isnan(values[r]))
+        missing.add(r);
+      else if (is_whole(values[r]))
+        labels[r] = std::to_string(static_cast<std::int64_t>(values[r]));
+      else
+        broken.add(r);
     }
     return labels;
   }
@@ -62,9 +72,8 @@ std::vector<double> as_reals(const NamedTable& source, const Column& column) {
     }
     return values;
   }
-  throw BadData(std::string(source.name) + ": column '" + column.name + "' is of type " +
-                type_name(column.values) + " in all " + std::to_string(source.table.rows()) +
-                " rows (from row 1); it must be numeric.");
+  throw BadData(std::string(source.name) + ": column '" + column.name + "' is of type " + type_name(column.values) +
+                " in all " + std::to_string(source.table.rows()) + " rows (from row 1); it must be numeric.");
 }
 
 std::string range_text(const NumberRule& rule) {
@@ -111,8 +120,7 @@ std::vector<std::string> read_labels(const NamedTable& source, const char* colum
   return labels;
 }
 
-std::vector<double> read_numbers(const NamedTable& source, const char* column, const NumberRule& rule,
-                                 double absent) {
+std::vector<double> read_numbers(const NamedTable& source, const char* column, const NumberRule& rule, double absent) {
   const Column* found = source.table.find(column);
   if (found == nullptr) return std::vector<double>(source.table.rows(), absent);
   std::vector<double> values = as_reals(source, *found);

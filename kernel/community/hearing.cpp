@@ -23,8 +23,10 @@ HeardSet::HeardSet(const Community& community, std::vector<double> relay_of_list
 }
 
 std::span<const Heard> HeardSet::of(int member) {
-  if (community_.hops > 1) forward(member);
-  else hear_directly(member, heard_);
+  if (community_.hops > 1)
+    forward(member);
+  else
+    hear_directly(member, heard_);
   return heard_;
 }
 

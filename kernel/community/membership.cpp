@@ -34,8 +34,7 @@ void refuse_duplicates(const std::vector<NamedLink>& links, std::size_t rows) {
     keys[k] = {links[k].community, links[k].listener, links[k].speaker, k % rows};
   }
   std::sort(keys.begin(), keys.end(), [](const LinkKey& a, const LinkKey& b) {
-    return std::tie(a.community, a.listener, a.speaker, a.row) <
-           std::tie(b.community, b.listener, b.speaker, b.row);
+    return std::tie(a.community, a.listener, a.speaker, a.row) < std::tie(b.community, b.listener, b.speaker, b.row);
   });
   std::vector<std::size_t> repeated;
   for (std::size_t k = 1; k < keys.size(); ++k) {
@@ -60,8 +59,10 @@ std::vector<int> find_communities(const Roster& roster, const NamedTable& source
   std::vector<int> found(labels.size(), -1);
   for (std::size_t r = 0; r < labels.size(); ++r) {
     const auto entry = roster.community_index.find(labels[r]);
-    if (entry == roster.community_index.end()) unknown.add(r);
-    else found[r] = entry->second;
+    if (entry == roster.community_index.end())
+      unknown.add(r);
+    else
+      found[r] = entry->second;
   }
   unknown.raise_if_any();
   return found;
@@ -77,9 +78,12 @@ std::vector<int> find_members(const Roster& roster, const NamedTable& source, co
   for (std::size_t r = 0; r < labels.size(); ++r) {
     const auto& index = roster.member_index[static_cast<std::size_t>(community_of_row[r])];
     const auto entry = index.find(labels[r]);
-    if (entry != index.end()) found[r] = entry->second;
-    else if (known_elsewhere(roster, labels[r])) across.add(r);
-    else unknown.add(r);
+    if (entry != index.end())
+      found[r] = entry->second;
+    else if (known_elsewhere(roster, labels[r]))
+      across.add(r);
+    else
+      unknown.add(r);
   }
   unknown.raise_if_any();
   across.raise_if_any();
@@ -118,7 +122,8 @@ void insert_links(std::vector<Community>& communities, const std::vector<NamedLi
     std::vector<NamedLink>& all = by_community[c];
     const int size = communities[c].size;
     for (int i = 0; !kept.speaker.empty() && i < size; ++i) {
-      for (std::int64_t k = kept.start[static_cast<std::size_t>(i)]; k < kept.start[static_cast<std::size_t>(i) + 1]; ++k) {
+      for (std::int64_t k = kept.start[static_cast<std::size_t>(i)]; k < kept.start[static_cast<std::size_t>(i) + 1];
+           ++k) {
         const auto at = static_cast<std::size_t>(k);
         all.push_back({static_cast<int>(c), i, kept.speaker[at], kept.relay_precision[at]});
       }
@@ -163,8 +168,10 @@ std::vector<std::vector<int>> read_audience(const Roster& roster, const Table* a
     const std::size_t slot = by_member ? static_cast<std::size_t>(member[r]) : 0;
     if (seen[c][slot]) repeated.add(r);
     seen[c][slot] = true;
-    if (by_member) chosen[c].push_back(member[r]);
-    else choose_all(c);
+    if (by_member)
+      chosen[c].push_back(member[r]);
+    else
+      choose_all(c);
   }
   repeated.raise_if_any();
   for (auto& positions : chosen) std::sort(positions.begin(), positions.end());

@@ -52,11 +52,11 @@ void check_values(const ParameterRule& rule, const Spread& values) {
   if (values.empty()) throw BadArgument(std::string(rule.name) + " has no value; give at least one.");
   for (std::size_t k = 0; k < values.size(); ++k) {
     if (inside(rule, values[k])) continue;
-    const std::string which = values.size() == 1 ? "" : " (value " + std::to_string(k + 1) + " of " +
-                                                            std::to_string(values.size()) + ")";
+    const std::string which =
+        values.size() == 1 ? "" : " (value " + std::to_string(k + 1) + " of " + std::to_string(values.size()) + ")";
     throw BadArgument(std::string(rule.name) + which + " is " +
-                      (std::isnan(values[k]) ? "missing" : plain_number(values[k])) + "; it must " +
-                      range_words(rule) + ".");
+                      (std::isnan(values[k]) ? "missing" : plain_number(values[k])) + "; it must " + range_words(rule) +
+                      ".");
   }
 }
 

@@ -22,8 +22,9 @@ Roster make_roster(const NamedTable& members) {
   Roster roster;
   const std::vector<std::string> communities = read_labels(members, "community");
   const std::vector<std::string> labels = read_labels(members, "member");
-  RowFaults repeated("members", "member", "the same member stands in an earlier row of its community; remove the "
-                                          "duplicate rows or rename the member");
+  RowFaults repeated("members", "member",
+                     "the same member stands in an earlier row of its community; remove the "
+                     "duplicate rows or rename the member");
   std::vector<std::int64_t> first_rows;
   for (std::size_t r = 0; r < labels.size(); ++r) {
     const int next = static_cast<int>(first_rows.size());
@@ -96,8 +97,8 @@ std::vector<std::vector<Group>> read_groups(const Roster& roster, const NamedTab
   const std::vector<int> member = find_members(roster, source, "member", community);
   std::vector<std::vector<Group>> groups(roster.row_of.size());
   std::vector<std::unordered_map<std::string, std::size_t>> index(roster.row_of.size());
-  RowFaults repeated(source.name, "member", "stands in an earlier row of the same " + std::string(id) +
-                                                "; remove the duplicate rows");
+  RowFaults repeated(source.name, "member",
+                     "stands in an earlier row of the same " + std::string(id) + "; remove the duplicate rows");
   for (std::size_t r = 0; r < member.size(); ++r) {
     const int c = community[r];
     const auto [entry, fresh] = index[c].try_emplace(labels[r], groups[c].size());
@@ -118,7 +119,8 @@ void refuse_mixed_precisions(const Roster& roster, const NamedTable& source, con
   const std::vector<int> community = find_communities(roster, source);
   const std::vector<std::string> labels = read_labels(source, "broadcast");
   std::vector<std::unordered_map<std::string, double>> first(roster.row_of.size());
-  RowFaults mixed(source.name, "precision", "differs from an earlier row of the same broadcast; give each one precision");
+  RowFaults mixed(source.name, "precision",
+                  "differs from an earlier row of the same broadcast; give each one precision");
   for (std::size_t r = 0; r < labels.size(); ++r) {
     const auto [entry, fresh] = first[community[r]].try_emplace(labels[r], precision[r]);
     if (!fresh && entry->second != precision[r]) mixed.add(r);
@@ -178,7 +180,8 @@ Study make_study(const StudyTables& tables) {
   const NamedTable members{tables.members, "members"};
   required(members, "community");
   required(members, "member");
-  if (tables.members.rows() == 0) throw BadData("members: column 'member' has 0 rows; a study needs at least one member.");
+  if (tables.members.rows() == 0)
+    throw BadData("members: column 'member' has 0 rows; a study needs at least one member.");
   auto roster = std::make_shared<const Roster>(make_roster(members));
   Study study{roster, make_communities(members, *roster)};
   if (tables.communities != nullptr) check_community_table(*roster, *tables.communities);

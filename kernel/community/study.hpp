@@ -1,7 +1,5 @@
 #pragma once
 // What a study holds (MODEL.md, section 1): communities of members, listening links, broadcasts and gatherings.
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <memory>
 #include <string>
@@ -9,6 +7,7 @@
 #include <vector>
 
 #include "community/table.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
@@ -54,12 +53,12 @@ struct Community {
 
 /// Who is called what, and in which row of `members` each stands. Shared by a study and its scenarios.
 struct Roster {
-  Values community_labels;                              // in the order in which members first names them
-  std::vector<std::string> community_names;             // the same as text, for messages
-  Values member_labels;                                 // in row order
+  Values community_labels;                   // in the order in which members first names them
+  std::vector<std::string> community_names;  // the same as text, for messages
+  Values member_labels;                      // in row order
   std::vector<int> community_of_row;
-  std::vector<int> position_of_row;                     // position within its community
-  std::vector<std::vector<std::int64_t>> row_of;        // by community, then position
+  std::vector<int> position_of_row;               // position within its community
+  std::vector<std::vector<std::int64_t>> row_of;  // by community, then position
   std::unordered_map<std::string, int> community_index;
   std::vector<std::unordered_map<std::string, int>> member_index;  // by community
 

@@ -1,11 +1,10 @@
-#include "numerics/strict.hpp"
-
 #include <algorithm>
 #include <cmath>
 #include <limits>
 
 #include "community/hearing.hpp"
 #include "community/study.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
@@ -34,7 +33,8 @@ Listening listening(const Community& community) {
 
 Table summarise(const Study& study) {
   const std::size_t count = study.communities.size();
-  std::vector<std::int64_t> members(count), links(count), broadcasts(count), gatherings(count), most(count), missing(count);
+  std::vector<std::int64_t> members(count), links(count), broadcasts(count), gatherings(count), most(count),
+      missing(count);
   std::vector<double> mean(count), observed(count);
   for (std::size_t c = 0; c < count; ++c) {
     const Community& community = study.communities[c];

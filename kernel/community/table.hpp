@@ -1,7 +1,5 @@
 #pragma once
 // A table of named columns: the form of every input and every result.
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <deque>
 #include <limits>
@@ -10,6 +8,8 @@
 #include <string_view>
 #include <variant>
 #include <vector>
+
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 

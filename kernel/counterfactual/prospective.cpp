@@ -80,7 +80,8 @@ class Comparison {
     std::vector<Row> rows(count + 1);
     Differences pooled(draws_);
     std::vector<double> totals;
-    for (const Community& community : baseline_.study->communities) totals.push_back(ordered_sum(community.values.weight));
+    for (const Community& community : baseline_.study->communities)
+      totals.push_back(ordered_sum(community.values.weight));
     const double total = ordered_sum(totals);
     for (std::int64_t first = 0; first < count; first += block) {
       const std::int64_t size = std::min(block, count - first);
@@ -123,7 +124,8 @@ class Comparison {
       const PlayKey key{seed_, static_cast<std::uint64_t>(c), static_cast<std::uint64_t>(r)};
       player_before.draw(key, std::nullopt);
       player_after.draw(key, std::nullopt);
-      plays.of_end[least][r] = player_after.turnout(after.least, weights) - player_before.turnout(before.least, weights);
+      plays.of_end[least][r] =
+          player_after.turnout(after.least, weights) - player_before.turnout(before.least, weights);
       plays.of_end[greatest][r] =
           player_after.turnout(after.greatest, weights) - player_before.turnout(before.greatest, weights);
     }

@@ -121,7 +121,8 @@ void Scenario::cut_links(const Table* table, bool mutual) {
     return;
   }
   const std::vector<NamedLink> links = read_links(*edited_.roster, *table, mutual);
-  refuse_links(edited_, links, table->rows(), false, "is not linked to the listener, so there is nothing to cut; remove the rows");
+  refuse_links(edited_, links, table->rows(), false,
+               "is not linked to the listener, so there is nothing to cut; remove the rows");
   std::vector<std::vector<bool>> keep;
   for (const Community& community : edited_.communities) keep.emplace_back(community.links.speaker.size(), true);
   for (const NamedLink& link : links) {
@@ -131,7 +132,8 @@ void Scenario::cut_links(const Table* table, bool mutual) {
 }
 
 void Scenario::thin_links(double share, std::uint64_t seed) {
-  if (!(share >= 0.0 && share <= 1.0)) throw BadArgument("thin_links: share is " + plain_number(share) + "; it must lie in 0 to 1.");
+  if (!(share >= 0.0 && share <= 1.0))
+    throw BadArgument("thin_links: share is " + plain_number(share) + "; it must lie in 0 to 1.");
   for (std::size_t c = 0; c < edited_.communities.size(); ++c) {
     thin(edited_.communities[c], share, Stream(StreamKey{seed, Purpose::thinning, c, 0}));
   }
@@ -172,7 +174,8 @@ void Scenario::set_beliefs(Parameter parameter, Spread values) {
 }
 
 void Scenario::forward_reports(int hops) {
-  if (hops < 1 || hops > 64) throw BadArgument("forward_reports: hops is " + std::to_string(hops) + "; it must lie in 1 to 64.");
+  if (hops < 1 || hops > 64)
+    throw BadArgument("forward_reports: hops is " + std::to_string(hops) + "; it must lie in 1 to 64.");
   for (Community& community : edited_.communities) community.hops = hops;
 }
 

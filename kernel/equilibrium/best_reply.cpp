@@ -97,7 +97,8 @@ double BestReply::reply(int member, double from, std::span<const double> cutoffs
   return inner_gain == 0.0 ? inner : outer;
 }
 
-double BestReply::steepest(int member, std::span<const double> cutoffs, std::span<const double> direction, double step) {
+double BestReply::steepest(int member, std::span<const double> cutoffs, std::span<const double> direction,
+                           double step) {
   const Row& row = rows_[member];
   if (row.has_step) return infinity;
   const std::size_t count = row.member.size();

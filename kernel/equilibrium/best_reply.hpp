@@ -1,11 +1,10 @@
 #pragma once
 // Best replies in cutoffs (MODEL.md, section 4), dense form: every member against every other in its reach.
-#include "numerics/strict.hpp"
-
 #include <span>
 #include <vector>
 
 #include "information/shared.hpp"
+#include "numerics/strict.hpp"
 #include "payoff/payoff.hpp"
 
 namespace folkmote {
@@ -26,9 +25,9 @@ class BestReply {
   /// F_i(t; cutoffs).
   double gain(int member, double t, std::span<const double> cutoffs, Limit at_jump = Limit::left);
 
-  /// The root of F_i, from the side on which `from` lies: with the limit from the left the value returned is at least the
-  /// root when gain(from) <= 0, with the limit from the right at most when gain(from) >= 0. So iterates stay on their
-  /// side. They move at least 49/50 of the way.
+  /// The root of F_i, from the side on which `from` lies: with the limit from the left the value returned is at least
+  /// the root when gain(from) <= 0, with the limit from the right at most when gain(from) >= 0. So iterates stay on
+  /// their side. They move at least 49/50 of the way.
   double reply(int member, double from, std::span<const double> cutoffs, Limit at_jump);
 
   /// How F_i moves when all cutoffs, its own t included, move together along `direction` v > 0: the largest value that

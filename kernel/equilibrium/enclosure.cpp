@@ -36,10 +36,14 @@ double attainable(const BestReply& game, double tolerance) {
 
 const char* verdict_text(Verdict verdict) {
   switch (verdict) {
-    case Verdict::proved_unique: return "proved unique";
-    case Verdict::bracketed: return "bracketed";
-    case Verdict::several: return "several";
-    default: return "not converged";
+    case Verdict::proved_unique:
+      return "proved unique";
+    case Verdict::bracketed:
+      return "bracketed";
+    case Verdict::several:
+      return "several";
+    default:
+      return "not converged";
   }
 }
 
@@ -62,8 +66,7 @@ Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop) 
   result.contraction_bound = game.contraction_bound();
   // Every equilibrium lies in the enclosure: once that is narrow, a bound on it decides what the global one could not.
   if (result.contraction_bound >= 1.0 && width <= tolerance) {
-    result.contraction_bound =
-        std::min(result.contraction_bound, box_bound(game, least.cutoffs(), greatest.cutoffs()));
+    result.contraction_bound = std::min(result.contraction_bound, box_bound(game, least.cutoffs(), greatest.cutoffs()));
   }
   result.width = width;
   result.iterations = std::max(greatest.iterations(), least.iterations());

@@ -1,11 +1,10 @@
 #pragma once
 // Enclosing the least and the greatest cutoff equilibrium of one community, and the verdict (MODEL.md, sections 4, 5).
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <vector>
 
 #include "equilibrium/best_reply.hpp"
+#include "numerics/strict.hpp"
 #include "parallel/workers.hpp"
 
 namespace folkmote {
@@ -21,15 +20,15 @@ struct SolveRule {
 };
 
 /// Every cutoff equilibrium lies between `least` and `greatest`. Unless the verdict is "not converged", each of the
-/// two is within a quarter of the tolerance of the extremal equilibrium that it bounds, or the whole enclosure is narrower
-/// than the tolerance (64 roundings of the largest cutoff, where that is wider).
+/// two is within a quarter of the tolerance of the extremal equilibrium that it bounds, or the whole enclosure is
+/// narrower than the tolerance (64 roundings of the largest cutoff, where that is wider).
 struct Enclosure {
   std::vector<double> least;
   std::vector<double> greatest;
   Verdict verdict = Verdict::not_converged;
   double contraction_bound = 0.0;  // below 1: a proof; see enclosure.cpp for the two bounds tried
-  double width = 0.0;          // max_i greatest_i - least_i
-  std::int64_t iterations = 0;  // sweeps and leaps of the end that took more
+  double width = 0.0;              // max_i greatest_i - least_i
+  std::int64_t iterations = 0;     // sweeps and leaps of the end that took more
 };
 
 Enclosure enclose(BestReply& game, const SolveRule& rule, const StopFlag& stop);

@@ -10,18 +10,23 @@
 //
 // Leaps. With precise signals, or near a critical point, sweeps creep. Let u be the iterate from the top and v > 0. If
 //   F_i(u - s v) < 0 for every i and every s in [0, S),
-// no equilibrium k <= u lies outside k <= u - S v: otherwise raise s until u - s v touches k, at member i, say; the others
-// are at or below the path, so 0 = F_i(k) <= F_i(u - s v) < 0, a contradiction. F_i is followed along the path by
-// the largest slope that it can have there (BestReply::steepest), so the whole leap is proved, not only its landing.
+// no equilibrium k <= u lies outside k <= u - S v: otherwise raise s until u - s v touches k, at member i, say; the
+// others are at or below the path, so 0 = F_i(k) <= F_i(u - s v) < 0, a contradiction. F_i is followed along the path
+// by the largest slope that it can have there (BestReply::steepest), so the whole leap is proved, not only its landing.
 //
-// When is an end found? If k = u - epsilon v with v > 0 satisfies BR(k) >= k, then by Tarski there is an equilibrium above
-// k; the greatest one therefore lies in [k, u]. The mirror image certifies the least. So an end is never declared found
-// because steps became small, which near a critical point they do long before the end.
+// When is an end found? If k = u - epsilon v with v > 0 satisfies BR(k) >= k, then by Tarski there is an equilibrium
+// above k; the greatest one therefore lies in [k, u]. The mirror image certifies the least. So an end is never declared
+// found because steps became small, which near a critical point they do long before the end.
 
 namespace folkmote {
 
 End::End(BestReply& game, Side side, double tolerance)
-    : game_(game), side_(side), slack_(tolerance / 4.0), gains_(game.size()), trial_(game.size()), linearised_(game.size()) {
+    : game_(game),
+      side_(side),
+      slack_(tolerance / 4.0),
+      gains_(game.size()),
+      trial_(game.size()),
+      linearised_(game.size()) {
   for (int i = 0; i < game.size(); ++i) {
     cutoffs_.push_back(side == Side::greatest ? game.highest(i) : game.lowest(i));
   }

@@ -1,12 +1,11 @@
 #pragma once
 // One end of the enclosure: the iterate that falls to the greatest equilibrium, or rises to the least.
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <vector>
 
 #include "equilibrium/best_reply.hpp"
 #include "equilibrium/linearised.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
@@ -29,9 +28,7 @@ class End {
   void advance(double room);
 
  private:
-  BestReply::Limit limit() const {
-    return side_ == Side::greatest ? BestReply::Limit::left : BestReply::Limit::right;
-  }
+  BestReply::Limit limit() const { return side_ == Side::greatest ? BestReply::Limit::left : BestReply::Limit::right; }
   double sign() const { return static_cast<double>(side_); }
 
   void sweep();
@@ -46,12 +43,12 @@ class End {
   Side side_;
   double slack_;
   std::vector<double> cutoffs_;
-  std::vector<double> gains_;       // |F_i| at the cutoffs
-  std::vector<double> direction_;   // of a leap
+  std::vector<double> gains_;      // |F_i| at the cutoffs
+  std::vector<double> direction_;  // of a leap
   std::vector<double> trial_;
   Linearised linearised_;
-  double largest_ = 0.0;           // of the last sweep
-  double last_largest_ = 0.0;      // of the sweep before
+  double largest_ = 0.0;       // of the last sweep
+  double last_largest_ = 0.0;  // of the sweep before
   std::int64_t iterations_ = 0;
   bool certified_ = false;
   bool stalled_ = false;

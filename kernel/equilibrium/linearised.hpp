@@ -1,18 +1,18 @@
 #pragma once
 // The game linearised at a vector of cutoffs, and the move that would change every gain as asked.
-#include "numerics/strict.hpp"
-
 #include <optional>
 #include <span>
 #include <vector>
 
 #include "equilibrium/best_reply.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
 class Linearised {
  public:
-  explicit Linearised(int size) : size_(size), matrix_(static_cast<std::size_t>(size) * static_cast<std::size_t>(size)) {}
+  explicit Linearised(int size)
+      : size_(size), matrix_(static_cast<std::size_t>(size) * static_cast<std::size_t>(size)) {}
 
   /// Takes the derivatives at `cutoffs`; false where the gain jumps.
   bool set(BestReply& game, std::span<const double> cutoffs);

@@ -9,9 +9,9 @@ namespace folkmote {
 std::uint64_t Solution::digest() const {
   Digest digest;
   digest.add(study->digest());
-  for (const Spread* values : {&beliefs.prior_mean, &beliefs.prior_precision, &beliefs.signal_precision,
-                               &beliefs.relay_precision, &beliefs.stake_sd, &payoff.benefit, &payoff.cost,
-                               &payoff.reach}) {
+  for (const Spread* values :
+       {&beliefs.prior_mean, &beliefs.prior_precision, &beliefs.signal_precision, &beliefs.relay_precision,
+        &beliefs.stake_sd, &payoff.benefit, &payoff.cost, &payoff.reach}) {
     digest.add(std::span<const double>(*values));
   }
   return digest.add(rule.tolerance).add(rule.sweeps).value();

@@ -5,13 +5,13 @@
 #include <limits>
 #include <vector>
 
-// Let k and k' be equilibria in the box, v > 0, and M = max_i |k_i - k'_i| / v_i, attained at i, say with k_i - k'_i = M v_i.
-// Both gains of i are 0, and along the segment from k' to k
+// Let k and k' be equilibria in the box, v > 0, and M = max_i |k_i - k'_i| / v_i, attained at i, say with k_i - k'_i =
+// M v_i. Both gains of i are 0, and along the segment from k' to k
 //   0 = F_i(k) - F_i(k') <= M { -v_i + b_i sum_j w_ij integral phi(z_ij) (v_j - rho_ij v_i) / s_ij }.
 // With phi replaced by its largest value on the box where v_j > rho_ij v_i, and its smallest elsewhere, the sum is
-// R_i(v) (BestReply::surviving). If R_i(v) < v_i for every i, then M = 0. For v = 1 and the whole line as the box this is the
-// sup-norm contraction of Morris & Shin's (2003) condition; a v near the Perron vector of R and the narrow box of a
-// finished enclosure prove more.
+// R_i(v) (BestReply::surviving). If R_i(v) < v_i for every i, then M = 0. For v = 1 and the whole line as the box this
+// is the sup-norm contraction of Morris & Shin's (2003) condition; a v near the Perron vector of R and the narrow box
+// of a finished enclosure prove more.
 
 namespace folkmote {
 

@@ -34,8 +34,7 @@ void add_reports(Knowledge& knowledge, const Study& study, const Beliefs& belief
     for (const Heard& h : heard.of(i)) {
       knowledge.speaker.push_back(h.speaker);
       knowledge.relay_precision.push_back(h.relay_precision);
-      knowledge.report_precision.push_back(
-          report_precision(knowledge.signal_precision[h.speaker], h.relay_precision));
+      knowledge.report_precision.push_back(report_precision(knowledge.signal_precision[h.speaker], h.relay_precision));
     }
     knowledge.start.push_back(static_cast<std::int64_t>(knowledge.speaker.size()));
   }
@@ -66,12 +65,18 @@ std::vector<TwoSum> held_information(const Knowledge& knowledge) {
 
 Spread& Beliefs::of(Parameter parameter) {
   switch (parameter) {
-    case Parameter::prior_mean: return prior_mean;
-    case Parameter::prior_precision: return prior_precision;
-    case Parameter::signal_precision: return signal_precision;
-    case Parameter::relay_precision: return relay_precision;
-    case Parameter::stake_sd: return stake_sd;
-    default: throw BadArgument("this parameter belongs to the payoff, not to beliefs.");
+    case Parameter::prior_mean:
+      return prior_mean;
+    case Parameter::prior_precision:
+      return prior_precision;
+    case Parameter::signal_precision:
+      return signal_precision;
+    case Parameter::relay_precision:
+      return relay_precision;
+    case Parameter::stake_sd:
+      return stake_sd;
+    default:
+      throw BadArgument("this parameter belongs to the payoff, not to beliefs.");
   }
 }
 
@@ -96,10 +101,9 @@ Knowledge make_knowledge(const Study& study, const Beliefs& beliefs, int communi
   knowledge.prior_precision = value_for(beliefs.prior_precision, study, community, 0);
   for (int i = 0; i < source.size; ++i) {
     const double given = source.values.signal_precision[i];
-    knowledge.signal_precision.push_back(
-        std::isnan(given) ? value_for(beliefs.signal_precision, study, community, i) : given);
-    knowledge.stake_sd.push_back(
-        own_or(source.values.stake_sd[i], value_for(beliefs.stake_sd, study, community, i)));
+    knowledge.signal_precision.push_back(std::isnan(given) ? value_for(beliefs.signal_precision, study, community, i)
+                                                           : given);
+    knowledge.stake_sd.push_back(own_or(source.values.stake_sd[i], value_for(beliefs.stake_sd, study, community, i)));
   }
   knowledge.broadcasts = source.broadcasts;
   add_reports(knowledge, study, beliefs, community);

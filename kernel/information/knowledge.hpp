@@ -1,23 +1,22 @@
 #pragma once
 // What members know (MODEL.md, section 2): information held, pooled estimates and their variances.
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <limits>
 #include <vector>
 
 #include "community/parameters.hpp"
 #include "community/study.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
 /// The parameters of beliefs as the caller set them. Member and link columns override them.
 struct Beliefs {
-  Spread prior_mean;                                             // mu
-  Spread prior_precision;                                        // alpha
-  Spread signal_precision;                                       // beta
+  Spread prior_mean;                                                // mu
+  Spread prior_precision;                                           // alpha
+  Spread signal_precision;                                          // beta
   Spread relay_precision{std::numeric_limits<double>::infinity()};  // gamma
-  Spread stake_sd{0.0};                                          // sigma
+  Spread stake_sd{0.0};                                             // sigma
 
   Spread& of(Parameter parameter);
 };
@@ -38,7 +37,7 @@ struct Knowledge {
   std::vector<double> relay_precision;   // gamma_ij; infinite: exact
   std::vector<double> report_precision;  // beta_ij = beta_j gamma_ij / (beta_j + gamma_ij)
 
-  std::vector<Broadcast> broadcasts;     // tau_q and S_q
+  std::vector<Broadcast> broadcasts;  // tau_q and S_q
 
   std::vector<double> held;                 // K_i
   std::vector<double> posterior_precision;  // p_i = alpha + K_i

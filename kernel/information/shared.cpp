@@ -103,8 +103,8 @@ ConditionalLaw SharedInformation::law(int i, int j) const {
   const double precisions = k.posterior_precision[i] * k.posterior_precision[j];
   const double own = unshared(i, j);
   const double other = unshared(j, i);
-  const double apart = (k.held[i] * k.held[j] / k.prior_precision) * (own + other) + own * k.held[j] +
-                       shared(i, j) * other;
+  const double apart =
+      (k.held[i] * k.held[j] / k.prior_precision) * (own + other) + own * k.held[j] + shared(i, j) * other;
   const double variance =
       stake_j + (k.estimate_variance[j] * stake_i + apart / precisions / precisions) / k.index_variance[i];
   return {(stake_i + own / precisions) / k.index_variance[i], std::sqrt(variance)};

@@ -1,10 +1,9 @@
 #pragma once
 // Shared information (MODEL.md, section 2) in its dense form, and the laws of pairs of indices that follow from it.
-#include "numerics/strict.hpp"
-
 #include <vector>
 
 #include "information/knowledge.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
@@ -32,7 +31,9 @@ class SharedInformation {
   bool any() const { return any_; }
 
  private:
-  std::size_t at(int i, int j) const { return static_cast<std::size_t>(i) * static_cast<std::size_t>(knowledge_.size) + static_cast<std::size_t>(j); }
+  std::size_t at(int i, int j) const {
+    return static_cast<std::size_t>(i) * static_cast<std::size_t>(knowledge_.size) + static_cast<std::size_t>(j);
+  }
   void fill();
 
   const Knowledge& knowledge_;

@@ -1,13 +1,12 @@
-#include "numerics/strict.hpp"
-
 #include "numerics/binormal.hpp"
-
-#include "numerics/binormal_parts.hpp"
-#include "numerics/normal.hpp"
-#include "numerics/tables/legendre_rows.hpp"
 
 #include <algorithm>
 #include <cstddef>
+
+#include "numerics/binormal_parts.hpp"
+#include "numerics/normal.hpp"
+#include "numerics/strict.hpp"
+#include "numerics/tables/legendre_rows.hpp"
 
 namespace folkmote {
 namespace {

@@ -1,12 +1,11 @@
-#include "numerics/strict.hpp"
-
 #include "numerics/elementary.hpp"
-
-#include "numerics/tables/elementary_rows.hpp"
-#include "numerics/two.hpp"
 
 #include <cmath>
 #include <cstddef>
+
+#include "numerics/strict.hpp"
+#include "numerics/tables/elementary_rows.hpp"
+#include "numerics/two.hpp"
 
 namespace folkmote {
 

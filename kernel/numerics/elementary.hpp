@@ -5,10 +5,10 @@
 // Infinities, NaN, zeros and subnormal numbers follow the usual conventions.
 #pragma once
 
+#include <span>
+
 #include "numerics/bits.hpp"
 #include "numerics/strict.hpp"
-
-#include <span>
 
 namespace folkmote {
 

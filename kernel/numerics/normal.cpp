@@ -1,12 +1,11 @@
-#include "numerics/strict.hpp"
-
 #include "numerics/normal.hpp"
+
+#include <cstddef>
 
 #include "numerics/normal_tail.hpp"
 #include "numerics/rows.hpp"
+#include "numerics/strict.hpp"
 #include "numerics/two.hpp"
-
-#include <cstddef>
 
 namespace folkmote {
 namespace {

@@ -3,10 +3,10 @@
 // The function may jump downwards: the point of the jump is then the answer, for no bracket ever loses it.
 #pragma once
 
+#include <utility>
+
 #include "numerics/bits.hpp"
 #include "numerics/strict.hpp"
-
-#include <utility>
 
 namespace folkmote {
 

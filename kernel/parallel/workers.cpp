@@ -20,7 +20,8 @@ constexpr auto poll_interval = std::chrono::milliseconds(50);
 /// What the workers and the waiting caller share.
 class Crew {
  public:
-  Crew(std::int64_t count, const std::function<void(std::int64_t, const StopFlag&)>& task) : count_(count), task_(task) {}
+  Crew(std::int64_t count, const std::function<void(std::int64_t, const StopFlag&)>& task)
+      : count_(count), task_(task) {}
 
   /// One worker: takes the next task until none is left.
   void work() {

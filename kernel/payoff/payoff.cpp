@@ -9,10 +9,14 @@ namespace folkmote {
 
 Spread& Payoff::of(Parameter parameter) {
   switch (parameter) {
-    case Parameter::benefit: return benefit;
-    case Parameter::cost: return cost;
-    case Parameter::reach: return reach;
-    default: throw BadArgument("this parameter belongs to beliefs, not to the payoff.");
+    case Parameter::benefit:
+      return benefit;
+    case Parameter::cost:
+      return cost;
+    case Parameter::reach:
+      return reach;
+    default:
+      throw BadArgument("this parameter belongs to beliefs, not to the payoff.");
   }
 }
 
@@ -28,7 +32,8 @@ Stakes make_stakes(const Study& study, const Payoff& payoff, int community) {
   stakes.weight = values.weight;
   stakes.mix = payoff.reach[0];
   for (int i = 0; i < study.communities[community].size; ++i) {
-    const double benefit = std::isnan(values.benefit[i]) ? value_for(payoff.benefit, study, community, i) : values.benefit[i];
+    const double benefit =
+        std::isnan(values.benefit[i]) ? value_for(payoff.benefit, study, community, i) : values.benefit[i];
     const double cost = std::isnan(values.cost[i]) ? value_for(payoff.cost, study, community, i) : values.cost[i];
     stakes.benefit.push_back(benefit);
     stakes.cost.push_back(cost + values.cost_shift[i]);

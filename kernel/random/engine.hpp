@@ -13,12 +13,11 @@
 // where Brown's doubling costs four multiplications for each bit.
 #pragma once
 
-#include "numerics/strict.hpp"
-
-#include <pcg_random.hpp>
-
 #include <cstdint>
+#include <pcg_random.hpp>
 #include <type_traits>
+
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
@@ -26,22 +25,22 @@ using Word128 = pcg64::state_type;
 static_assert(std::is_same_v<Word128, __uint128_t>, "a compiler with 128-bit integers is needed");
 
 constexpr Word128 join(std::uint64_t high, std::uint64_t low) noexcept {
-    return (static_cast<Word128>(high) << 64) | low;
+  return (static_cast<Word128>(high) << 64) | low;
 }
 
 class Engine : private pcg64 {
-public:
-    static constexpr Word128 factor = pcg64::multiplier();
+ public:
+  static constexpr Word128 factor = pcg64::multiplier();
 
-    Engine(Word128 state, Word128 sequence) : pcg64(state, sequence) {}
+  Engine(Word128 state, Word128 sequence) : pcg64(state, sequence) {}
 
-    std::uint64_t operator()() { return pcg64::operator()(); }
+  std::uint64_t operator()() { return pcg64::operator()(); }
 
-    // Forward by `count` numbers, as if they had been drawn.
-    void jump(std::uint64_t count);
+  // Forward by `count` numbers, as if they had been drawn.
+  void jump(std::uint64_t count);
 
-    Word128 state() const noexcept { return state_; }
-    void set_state(Word128 state) noexcept { state_ = state; }
+  Word128 state() const noexcept { return state_; }
+  void set_state(Word128 state) noexcept { state_ = state; }
 };
 
 }  // namespace folkmote

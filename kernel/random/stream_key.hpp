@@ -1,37 +1,36 @@
 // From the key of a stream to the 256 bits that start its generator.
 #pragma once
 
-#include "numerics/strict.hpp"
-
-#include "random/purpose.hpp"
-#include "random/splitmix64.hpp"
-
 #include <array>
 #include <cstddef>
 #include <cstdint>
+
+#include "numerics/strict.hpp"
+#include "random/purpose.hpp"
+#include "random/splitmix64.hpp"
 
 namespace folkmote {
 
 // Names one stream. `community` and `replication` are indices from 0 that do not
 // depend on how the work is split over threads, processes or machines.
 struct StreamKey {
-    std::uint64_t seed = 0;
-    Purpose purpose = Purpose::test;
-    std::uint64_t community = 0;
-    std::uint64_t replication = 0;
+  std::uint64_t seed = 0;
+  Purpose purpose = Purpose::test;
+  std::uint64_t community = 0;
+  std::uint64_t replication = 0;
 
-    friend constexpr bool operator==(const StreamKey&, const StreamKey&) = default;
+  friend constexpr bool operator==(const StreamKey&, const StreamKey&) = default;
 };
 
 // Two 128-bit numbers: where the generator starts, and which of its 2^127 sequences
 // it follows (the highest bit of the second is not used by the generator).
 struct EngineSeed {
-    std::uint64_t state_high;
-    std::uint64_t state_low;
-    std::uint64_t stream_high;
-    std::uint64_t stream_low;
+  std::uint64_t state_high;
+  std::uint64_t state_low;
+  std::uint64_t stream_high;
+  std::uint64_t stream_low;
 
-    friend constexpr bool operator==(const EngineSeed&, const EngineSeed&) = default;
+  friend constexpr bool operator==(const EngineSeed&, const EngineSeed&) = default;
 };
 
 inline constexpr std::size_t mixing_rounds = 4;
@@ -49,14 +48,13 @@ inline constexpr std::size_t mixing_rounds = 4;
 // their numbers, and a large study with many replications comes near that many.
 // After two rounds every lane depends on all four words; the other two are margin.
 constexpr EngineSeed derive_engine_seed(const StreamKey& key) noexcept {
-    std::array<std::uint64_t, 4> lane{key.seed, static_cast<std::uint64_t>(key.purpose),
-                                      key.community, key.replication};
-    std::uint64_t constant = 0;
-    for (std::size_t step = 0; step < 4 * mixing_rounds; ++step) {
-        constant += golden_gamma;
-        lane[(step + 1) % 4] ^= splitmix64_finalise(lane[step % 4] + constant);
-    }
-    return {lane[0], lane[1], lane[2], lane[3]};
+  std::array<std::uint64_t, 4> lane{key.seed, static_cast<std::uint64_t>(key.purpose), key.community, key.replication};
+  std::uint64_t constant = 0;
+  for (std::size_t step = 0; step < 4 * mixing_rounds; ++step) {
+    constant += golden_gamma;
+    lane[(step + 1) % 4] ^= splitmix64_finalise(lane[step % 4] + constant);
+  }
+  return {lane[0], lane[1], lane[2], lane[3]};
 }
 
 }  // namespace folkmote

@@ -1,13 +1,12 @@
 // Keyed streams of random numbers whose every number has an address.
 #pragma once
 
-#include "numerics/strict.hpp"
-
-#include "random/engine.hpp"
-#include "random/stream_key.hpp"
-
 #include <cstdint>
 #include <span>
+
+#include "numerics/strict.hpp"
+#include "random/engine.hpp"
+#include "random/stream_key.hpp"
 
 namespace folkmote {
 
@@ -25,11 +24,11 @@ inline constexpr unsigned stream_version = 1;
 // results are multiples of 2^-52. The last midpoint would round to 1: it becomes the
 // greatest number below 1, which is 1 - 2^-53. So neither 0 nor 1 can be returned.
 inline double uniform_from_bits(std::uint64_t bits) noexcept {
-    constexpr double below_one = 1.0 - 0x1p-53;
-    // Through a signed integer: the conversion is then one instruction on every target.
-    const double cell = static_cast<double>(static_cast<std::int64_t>(bits >> 11));
-    const double middle = (cell + 0.5) * 0x1p-53;
-    return middle < below_one ? middle : below_one;
+  constexpr double below_one = 1.0 - 0x1p-53;
+  // Through a signed integer: the conversion is then one instruction on every target.
+  const double cell = static_cast<double>(static_cast<std::int64_t>(bits >> 11));
+  const double middle = (cell + 0.5) * 0x1p-53;
+  return middle < below_one ? middle : below_one;
 }
 
 // One stream. A cheap value (64 bytes): copy it to draw the same numbers twice.
@@ -41,45 +40,45 @@ inline double uniform_from_bits(std::uint64_t bits) noexcept {
 // The words have positions 0 to 2^64 - 2. Position 2^64 - 1 is the end: it can be
 // reached, but nothing may be drawn there (no program lives long enough to step to it).
 class Stream {
-public:
-    explicit Stream(const StreamKey& key);
+ public:
+  explicit Stream(const StreamKey& key);
 
-    std::uint64_t bits() {
-        ++position_;
-        return engine_();
-    }
+  std::uint64_t bits() {
+    ++position_;
+    return engine_();
+  }
 
-    // Strictly inside (0, 1); see uniform_from_bits.
-    double uniform() { return uniform_from_bits(bits()); }
+  // Strictly inside (0, 1); see uniform_from_bits.
+  double uniform() { return uniform_from_bits(bits()); }
 
-    // Standard normal by inversion: normal_quantile(uniform()). It lies within
-    // -8.3 and 8.3, the quantiles of 2^-54 and 1 - 2^-53.
-    double normal();
+  // Standard normal by inversion: normal_quantile(uniform()). It lies within
+  // -8.3 and 8.3, the quantiles of 2^-54 and 1 - 2^-53.
+  double normal();
 
-    // A whole number from 0 to bound - 1, each exactly as likely as the others.
-    // Lemire (2019), "Fast random integer generation in an interval", ACM Transactions on
-    // Modeling and Computer Simulation 29(1):3. May reject words, with probability below
-    // bound / 2^64 for each. Throws std::invalid_argument if bound is 0.
-    std::uint64_t below(std::uint64_t bound);
+  // A whole number from 0 to bound - 1, each exactly as likely as the others.
+  // Lemire (2019), "Fast random integer generation in an interval", ACM Transactions on
+  // Modeling and Computer Simulation 29(1):3. May reject words, with probability below
+  // bound / 2^64 for each. Throws std::invalid_argument if bound is 0.
+  std::uint64_t below(std::uint64_t bound);
 
-    // The same numbers as that many calls one after the other.
-    void fill_uniform(std::span<double> out);
-    void fill_normal(std::span<double> out);
+  // The same numbers as that many calls one after the other.
+  void fill_uniform(std::span<double> out);
+  void fill_normal(std::span<double> out);
 
-    // Where the next word comes from.
-    std::uint64_t position() const noexcept { return position_; }
+  // Where the next word comes from.
+  std::uint64_t position() const noexcept { return position_; }
 
-    // Makes the word at `position` the next one. Forward it costs one multiply-add for each
-    // hexadecimal digit of the distance, at most 16; backward the distance is from 0.
-    void seek(std::uint64_t position);
+  // Makes the word at `position` the next one. Forward it costs one multiply-add for each
+  // hexadecimal digit of the distance, at most 16; backward the distance is from 0.
+  void seek(std::uint64_t position);
 
-    // Skips `count` words. Throws std::out_of_range, and stays, if the end would be passed.
-    void advance(std::uint64_t count);
+  // Skips `count` words. Throws std::out_of_range, and stays, if the end would be passed.
+  void advance(std::uint64_t count);
 
-private:
-    Engine engine_;
-    Word128 origin_;  // The state at position 0.
-    std::uint64_t position_ = 0;
+ private:
+  Engine engine_;
+  Word128 origin_;  // The state at position 0.
+  std::uint64_t position_ = 0;
 };
 
 }  // namespace folkmote

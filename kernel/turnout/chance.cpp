@@ -69,7 +69,8 @@ double chance_at_least_given(const Knowledge& knowledge, const SharedInformation
                              double obstacle) {
   if (threshold <= 0.0) return 1.0;
   if (chance_is_exact(shared, weights)) {
-    return poisson_binomial_tail(chances_given(knowledge, cutoffs, obstacle), members_needed(knowledge.size, threshold));
+    return poisson_binomial_tail(chances_given(knowledge, cutoffs, obstacle),
+                                 members_needed(knowledge.size, threshold));
   }
   const Moments moments = turnout_given(knowledge, shared, weights, cutoffs, obstacle);
   if (moments.sd == 0.0) return moments.mean >= threshold ? 1.0 : 0.0;
@@ -85,8 +86,8 @@ double chance_at_least(const Knowledge& knowledge, const SharedInformation& shar
   if (threshold <= 0.0) return 1.0;
   const double scale = 1.0 / std::sqrt(knowledge.prior_precision);
   const auto integrand = [&](double z) {
-    return normal_density(z) * chance_at_least_given(knowledge, shared, weights, cutoffs, threshold,
-                                                     knowledge.prior_mean + scale * z);
+    return normal_density(z) *
+           chance_at_least_given(knowledge, shared, weights, cutoffs, threshold, knowledge.prior_mean + scale * z);
   };
   const QuadratureRule rule = gauss_legendre(10);
   constexpr double reach = 8.0;

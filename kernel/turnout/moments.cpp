@@ -41,8 +41,8 @@ std::vector<double> standardised_given(const Knowledge& knowledge, std::span<con
   return z;
 }
 
-/// Mean and standard deviation of sum omega a / sum omega from standardised cutoffs `z` and the correlation of each pair
-/// (0 where a pair is independent).
+/// Mean and standard deviation of sum omega a / sum omega from standardised cutoffs `z` and the correlation of each
+/// pair (0 where a pair is independent).
 template <class Correlation>
 Moments moments_of(std::span<const double> weights, std::vector<double> z, const Correlation& correlation) {
   const std::size_t n = z.size();

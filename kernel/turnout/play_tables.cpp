@@ -1,7 +1,6 @@
+#include "community/columns.hpp"
 #include "turnout/plays.hpp"
 #include "turnout/tables.hpp"
-
-#include "community/columns.hpp"
 
 namespace folkmote {
 

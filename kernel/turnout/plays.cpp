@@ -27,8 +27,8 @@ Player::Player(const Knowledge& knowledge)
 
 double Player::draw(const PlayKey& key, std::optional<double> given) {
   const Knowledge& k = knowledge_;
-  const double theta = given ? *given
-                             : k.prior_mean + stream_of(key, Purpose::obstacle).normal() / std::sqrt(k.prior_precision);
+  const double theta =
+      given ? *given : k.prior_mean + stream_of(key, Purpose::obstacle).normal() / std::sqrt(k.prior_precision);
   stream_of(key, Purpose::signal).fill_normal(signal_);
   stream_of(key, Purpose::stake).fill_normal(stake_);
   for (int i = 0; i < k.size; ++i) {

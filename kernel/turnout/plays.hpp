@@ -1,18 +1,17 @@
 #pragma once
 // Seeded plays of one community: the world is drawn, members pool what they hear, and act on their cutoffs.
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <optional>
 #include <span>
 #include <vector>
 
 #include "information/knowledge.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 
-/// Which draws a play uses. Every draw has a fixed address: theta is number 0 of its stream, x_i and nu_i are number i of
-/// theirs, zeta_q is number q, and the relay noise of i hearing j is number i n + j. Two networks on the same
+/// Which draws a play uses. Every draw has a fixed address: theta is number 0 of its stream, x_i and nu_i are number i
+/// of theirs, zeta_q is number q, and the relay noise of i hearing j is number i n + j. Two networks on the same
 /// members therefore share every draw that both use (common random numbers).
 struct PlayKey {
   std::uint64_t seed;

@@ -141,8 +141,9 @@ Table turnout_table(const Solution& solution, std::span<const double> given, std
     fill_community(solution, static_cast<int>(c), conditions, at_least, static_cast<std::size_t>(c) * each, rows);
   });
   Table table(communities * each);
-  table.add("community", take_rows(solution.study->roster->community_labels,
-                                   repeat_each(static_cast<std::int64_t>(communities), static_cast<std::int64_t>(each))));
+  table.add("community",
+            take_rows(solution.study->roster->community_labels,
+                      repeat_each(static_cast<std::int64_t>(communities), static_cast<std::int64_t>(each))));
   if (!given.empty()) table.add("given", std::move(rows.given));
   if (!at_least.empty()) table.add("at_least", std::move(rows.at_least));
   table.add("turnout_least", std::move(rows.mean[0]));

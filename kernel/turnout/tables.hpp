@@ -1,13 +1,12 @@
 #pragma once
 // What a solved study is asked for, as tables.
-#include "numerics/strict.hpp"
-
 #include <cstdint>
 #include <optional>
 #include <span>
 
 #include "community/table.hpp"
 #include "equilibrium/solution.hpp"
+#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,12 +1,5 @@
 // Speed of the normal and bivariate normal functions, as ratios within one run. Not a test: prints a table.
 //     bench_normal [values] [rounds]
-#include "numerics/strict.hpp"
-
-#include "numerics/binormal.hpp"
-#include "numerics/elementary.hpp"
-#include "numerics/normal.hpp"
-#include "numerics/sums.hpp"
-
 #include <algorithm>
 #include <chrono>
 #include <cmath>
@@ -14,6 +7,12 @@
 #include <cstdlib>
 #include <random>
 #include <vector>
+
+#include "numerics/binormal.hpp"
+#include "numerics/elementary.hpp"
+#include "numerics/normal.hpp"
+#include "numerics/strict.hpp"
+#include "numerics/sums.hpp"
 
 namespace {
 

@@ -9,10 +9,10 @@
 extern uint64_t sound_digest;
 
 /* The session still works, gives the same numbers, and holds no handle more than `handles`. */
-#define CHECK_HEALTHY(handles)                              \
-  do {                                                      \
-    CHECK(session_digest(NULL) == sound_digest);            \
-    CHECK(folkmote_live_handles() == (int64_t)(handles));   \
+#define CHECK_HEALTHY(handles)                            \
+  do {                                                    \
+    CHECK(session_digest(NULL) == sound_digest);          \
+    CHECK(folkmote_live_handles() == (int64_t)(handles)); \
   } while (0)
 
 void test_constants(void);

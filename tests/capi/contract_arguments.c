@@ -12,7 +12,7 @@ static char message[FOLKMOTE_MESSAGE_BYTES];
 /* The header's ranges, once more. `finest`: 1 one value, 2 per community, 3 per member. */
 static const struct parameter {
   int number;
-  const char *name;
+  const char* name;
   double low, high;
   int low_open, high_open;
   int finest;
@@ -28,21 +28,21 @@ static const struct parameter {
 };
 enum { parameter_count = sizeof parameters / sizeof *parameters };
 
-static folkmote_beliefs *beliefs;
-static folkmote_payoff *payoff;
+static folkmote_beliefs* beliefs;
+static folkmote_payoff* payoff;
 
-static folkmote_status set_values(int number, int64_t count, const double *values) {
+static folkmote_status set_values(int number, int64_t count, const double* values) {
   return number < 16 ? folkmote_beliefs_set(beliefs, number, count, values, message)
                      : folkmote_payoff_set(payoff, number, count, values, message);
 }
 
-static void check_set(const struct parameter *p, double value, int accepted) {
+static void check_set(const struct parameter* p, double value, int accepted) {
   CHECK_STATUS(set_values(p->number, 1, &value), accepted ? FOLKMOTE_OK : FOLKMOTE_BAD_ARGUMENT, message);
   if (!accepted) CHECK_SAYS(message, p->name);
 }
 
 /* At each end, just inside and just outside it. */
-static void test_ends(const struct parameter *p) {
+static void test_ends(const struct parameter* p) {
   double low = 7, high = 7;
   int low_open = 7, high_open = 7;
   CHECK_STATUS(folkmote_parameter_bounds(p->number, &low, &high, &low_open, &high_open, message), FOLKMOTE_OK, message);
@@ -58,7 +58,7 @@ static void test_ends(const struct parameter *p) {
   check_set(p, 0.5, 1);
 }
 
-static void test_counts(const struct parameter *p) {
+static void test_counts(const struct parameter* p) {
   const double values[3] = {0.5, NAN, 0.5};
   CHECK_STATUS(set_values(p->number, 0, values), FOLKMOTE_BAD_ARGUMENT, message);
   CHECK_STATUS(set_values(p->number, -1, values), FOLKMOTE_BAD_ARGUMENT, message);
@@ -69,11 +69,11 @@ static void test_counts(const struct parameter *p) {
 }
 
 /* Which lengths a solve takes: 1, the number of communities (2), the number of members (5), never 3. */
-static void test_lengths(const struct parameter *p, const folkmote_study *study) {
+static void test_lengths(const struct parameter* p, const folkmote_study* study) {
   const double values[5] = {0.5, 0.5, 0.5, 0.5, 0.5};
   const int64_t counts[4] = {1, 2, 5, 3};
   for (int k = 0; k < 4; ++k) {
-    folkmote_equilibrium *equilibrium = (folkmote_equilibrium *)&equilibrium;
+    folkmote_equilibrium* equilibrium = (folkmote_equilibrium*)&equilibrium;
     const int accepted = k < p->finest;
     CHECK_STATUS(set_values(p->number, counts[k], values), FOLKMOTE_OK, message);
     CHECK_STATUS(folkmote_equilibrium_create(study, beliefs, payoff, NULL, &equilibrium, message),
@@ -99,19 +99,19 @@ static void test_wrong_numbers(void) {
   }
   CHECK_STATUS(folkmote_beliefs_set(beliefs, FOLKMOTE_COST, 1, &value, message), FOLKMOTE_BAD_ARGUMENT, message);
   CHECK_STATUS(folkmote_payoff_set(payoff, FOLKMOTE_PRIOR_MEAN, 1, &value, message), FOLKMOTE_BAD_ARGUMENT, message);
-  folkmote_payoff *none = payoff;
+  folkmote_payoff* none = payoff;
   CHECK_STATUS(folkmote_payoff_create(0, &none, message), FOLKMOTE_BAD_ARGUMENT, message);
   CHECK(none == NULL);
   CHECK_STATUS(folkmote_payoff_create(2, &none, message), FOLKMOTE_BAD_ARGUMENT, message);
 }
 
 /* Solving with beliefs that lack a parameter names it; a column of `members` stands in for the signal precision. */
-static void test_unset(const folkmote_study *study) {
+static void test_unset(const folkmote_study* study) {
   const double value = 0.5;
   const int numbers[3] = {FOLKMOTE_PRIOR_MEAN, FOLKMOTE_PRIOR_PRECISION, FOLKMOTE_SIGNAL_PRECISION};
-  const char *const names[3] = {"prior_mean", "prior_precision", "signal_precision"};
-  folkmote_beliefs *unset = NULL;
-  folkmote_equilibrium *equilibrium = NULL;
+  const char* const names[3] = {"prior_mean", "prior_precision", "signal_precision"};
+  folkmote_beliefs* unset = NULL;
+  folkmote_equilibrium* equilibrium = NULL;
   folkmote_beliefs_create(&unset, NULL);
   for (int k = 0; k < 3; ++k) {
     CHECK_STATUS(folkmote_equilibrium_create(study, unset, payoff, NULL, &equilibrium, message), FOLKMOTE_BAD_ARGUMENT,
@@ -119,8 +119,8 @@ static void test_unset(const folkmote_study *study) {
     CHECK_SAYS(message, names[k]);
     if (k < 2) folkmote_beliefs_set(unset, numbers[k], 1, &value, NULL);
   }
-  folkmote_table *members = TABLE("community:i 1 1", "member:i 1 2", "signal_precision:r 1 2");
-  folkmote_study *own = NULL;
+  folkmote_table* members = TABLE("community:i 1 1", "member:i 1 2", "signal_precision:r 1 2");
+  folkmote_study* own = NULL;
   folkmote_study_create(members, NULL, NULL, NULL, NULL, 0, &own, NULL);
   CHECK_STATUS(folkmote_equilibrium_create(own, unset, payoff, NULL, &equilibrium, message), FOLKMOTE_OK, message);
   folkmote_equilibrium_destroy(equilibrium);
@@ -130,16 +130,18 @@ static void test_unset(const folkmote_study *study) {
 }
 
 /* The ends of every range at once, far from anything sensible, must give an answer and keep the session sound. */
-static void test_extremes(const folkmote_study *study) {
+static void test_extremes(const folkmote_study* study) {
   for (int k = 0; k < parameter_count; ++k) {
     for (int end = 0; end < 2; ++end) {
-      const struct parameter *p = &parameters[k];
+      const struct parameter* p = &parameters[k];
       const double inside = end == 0 ? nextafter(p->low, p->high) : nextafter(p->high, p->low), usual = 0.5;
-      folkmote_equilibrium *equilibrium = NULL;
-      folkmote_table *table = NULL;
+      folkmote_equilibrium* equilibrium = NULL;
+      folkmote_table* table = NULL;
       set_values(p->number, 1, &inside);
-      CHECK_STATUS(folkmote_equilibrium_create(study, beliefs, payoff, NULL, &equilibrium, message), FOLKMOTE_OK, message);
-      CHECK_STATUS(folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_COMMUNITY, &table, message), FOLKMOTE_OK, message);
+      CHECK_STATUS(folkmote_equilibrium_create(study, beliefs, payoff, NULL, &equilibrium, message), FOLKMOTE_OK,
+                   message);
+      CHECK_STATUS(folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_COMMUNITY, &table, message), FOLKMOTE_OK,
+                   message);
       for (int c = 0; c < 2; ++c) {
         const double least = real_at(table, "turnout_least", c), greatest = real_at(table, "turnout_greatest", c);
         /* Two cutoffs a rounding apart may cross in the last bits; anything that is no share fails. */
@@ -155,7 +157,7 @@ static void test_extremes(const folkmote_study *study) {
 }
 
 void test_parameters(void) {
-  folkmote_study *study = sound_study();
+  folkmote_study* study = sound_study();
   beliefs = plain_beliefs(0.5, 0.5, 0.5);
   payoff = plain_payoff();
   for (int k = 0; k < parameter_count; ++k) {
@@ -180,7 +182,7 @@ void test_options(void) {
     double low, high;
     int whole;
   } rules[] = {{FOLKMOTE_TOLERANCE, 1e-13, 1, 0}, {FOLKMOTE_SWEEPS, 1, 1e9, 1}, {FOLKMOTE_THREADS, 1, 1024, 1}};
-  folkmote_options *options = NULL;
+  folkmote_options* options = NULL;
   CHECK_STATUS(folkmote_options_create(&options, message), FOLKMOTE_OK, message);
   for (int k = 0; k < 3; ++k) {
     const int option = rules[k].option;
@@ -208,8 +210,8 @@ void test_options(void) {
 #define REFUSED(call) CHECK_STATUS(call, FOLKMOTE_BAD_ARGUMENT, message)
 
 static void test_null_tables(void) {
-  folkmote_table *table = TABLE("a:t x", "b:i 1", "c:r 1");
-  const char *text[1] = {"x"};
+  folkmote_table* table = TABLE("a:t x", "b:i 1", "c:r 1");
+  const char* text[1] = {"x"};
   int64_t integer[1] = {1};
   double real[1] = {1};
   REFUSED(folkmote_table_create(1, NULL, message));
@@ -235,9 +237,9 @@ static void test_null_tables(void) {
 }
 
 static void test_null_settings(void) {
-  folkmote_beliefs *b = plain_beliefs(0, 1, 1);
-  folkmote_payoff *p = plain_payoff();
-  folkmote_options *o = NULL;
+  folkmote_beliefs* b = plain_beliefs(0, 1, 1);
+  folkmote_payoff* p = plain_payoff();
+  folkmote_options* o = NULL;
   folkmote_options_create(&o, NULL);
   const double value = 1;
   double low = 7, high = 7;
@@ -262,11 +264,11 @@ static void test_null_settings(void) {
   folkmote_beliefs_destroy(b);
 }
 
-static void test_null_results(const folkmote_study *study, const folkmote_equilibrium *e, const folkmote_scenario *s) {
-  folkmote_beliefs *b = plain_beliefs(0, 1, 1);
-  folkmote_payoff *p = plain_payoff();
-  folkmote_equilibrium *made = (folkmote_equilibrium *)&made;
-  folkmote_table *table = (folkmote_table *)&table;
+static void test_null_results(const folkmote_study* study, const folkmote_equilibrium* e, const folkmote_scenario* s) {
+  folkmote_beliefs* b = plain_beliefs(0, 1, 1);
+  folkmote_payoff* p = plain_payoff();
+  folkmote_equilibrium* made = (folkmote_equilibrium*)&made;
+  folkmote_table* table = (folkmote_table*)&table;
   const double values[1] = {0.5};
   REFUSED(folkmote_equilibrium_create(NULL, b, p, NULL, &made, message));
   CHECK(made == NULL);
@@ -291,11 +293,11 @@ static void test_null_results(const folkmote_study *study, const folkmote_equili
   folkmote_beliefs_destroy(b);
 }
 
-static void test_null_studies(const folkmote_study *study, folkmote_scenario *s) {
-  folkmote_table *members = build_table(sound_members);
-  folkmote_study *made = (folkmote_study *)&made;
-  folkmote_scenario *scenario = (folkmote_scenario *)&scenario;
-  folkmote_table *table = (folkmote_table *)&table;
+static void test_null_studies(const folkmote_study* study, folkmote_scenario* s) {
+  folkmote_table* members = build_table(sound_members);
+  folkmote_study* made = (folkmote_study*)&made;
+  folkmote_scenario* scenario = (folkmote_scenario*)&scenario;
+  folkmote_table* table = (folkmote_table*)&table;
   const double value = 1;
   REFUSED(folkmote_study_create(NULL, NULL, NULL, NULL, NULL, 0, &made, message));
   CHECK(made == NULL);
@@ -316,7 +318,7 @@ static void test_null_studies(const folkmote_study *study, folkmote_scenario *s)
   REFUSED(folkmote_scenario_set_beliefs(NULL, 1, 1, &value, message));
   REFUSED(folkmote_scenario_set_beliefs(s, 1, 1, NULL, message));
   REFUSED(folkmote_scenario_forward_reports(NULL, 1, message));
-  made = (folkmote_study *)&made;
+  made = (folkmote_study*)&made;
   REFUSED(folkmote_scenario_study(NULL, &made, message));
   CHECK(made == NULL);
   REFUSED(folkmote_scenario_study(s, NULL, message));
@@ -325,15 +327,15 @@ static void test_null_studies(const folkmote_study *study, folkmote_scenario *s)
 }
 
 static void test_null_defaults(void) {
-  folkmote_study *study = sound_study();
-  folkmote_scenario *scenario = NULL;
+  folkmote_study* study = sound_study();
+  folkmote_scenario* scenario = NULL;
   folkmote_scenario_create(study, &scenario, NULL);
   CHECK_STATUS(folkmote_scenario_broadcast(scenario, NULL, 1, message), FOLKMOTE_OK, message);
   CHECK_STATUS(folkmote_scenario_gathering(scenario, NULL, message), FOLKMOTE_OK, message);
   CHECK_STATUS(folkmote_scenario_shift_cost(scenario, NULL, 0.1, message), FOLKMOTE_OK, message);
   CHECK_STATUS(folkmote_scenario_cut_links(scenario, NULL, 0, message), FOLKMOTE_OK, message);
-  folkmote_study *edited = NULL;
-  folkmote_table *summary = NULL;
+  folkmote_study* edited = NULL;
+  folkmote_table* summary = NULL;
   folkmote_scenario_study(scenario, &edited, NULL);
   folkmote_study_summary(edited, &summary, NULL);
   CHECK(integer_at(summary, "links", 0) == 0 && integer_at(summary, "links", 1) == 0);
@@ -356,11 +358,11 @@ static void test_destroy_null(void) {
 }
 
 void test_nulls(void) {
-  folkmote_study *study = sound_study();
-  folkmote_scenario *scenario = NULL;
+  folkmote_study* study = sound_study();
+  folkmote_scenario* scenario = NULL;
   folkmote_scenario_create(study, &scenario, NULL);
   const uint64_t before = folkmote_scenario_digest(scenario);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, 0.4, 1, 1);
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, 0.4, 1, 1);
   test_null_tables();
   test_null_settings();
   test_null_results(study, equilibrium, scenario);
@@ -378,7 +380,7 @@ void test_nulls(void) {
 
 enum { canary = 0x5A, spare = 256, long_name = 5000 };
 
-static int whole_utf8(const char *text) {
+static int whole_utf8(const char* text) {
   while (*text != '\0') {
     const unsigned char lead = (unsigned char)*text++;
     int more = lead < 0x80 ? 0 : lead >= 0xF0 ? 3 : lead >= 0xE0 ? 2 : lead >= 0xC0 ? 1 : -1;
@@ -391,7 +393,7 @@ static int whole_utf8(const char *text) {
 }
 
 /* A column whose name fills the message and more, added twice; `letter` is repeated, `shift` moves the cut. */
-static void test_long_name(const char *letter, int shift) {
+static void test_long_name(const char* letter, int shift) {
   char name[long_name + 8];
   size_t length = 0;
   for (; (int)length < shift; ++length) name[length] = 'a';
@@ -402,36 +404,36 @@ static void test_long_name(const char *letter, int shift) {
   name[length] = '\0';
   unsigned char buffer[FOLKMOTE_MESSAGE_BYTES + spare];
   memset(buffer, canary, sizeof buffer);
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const double value = 1;
   folkmote_table_create(1, &table, NULL);
   folkmote_table_add_real(table, name, &value, NULL);
-  CHECK(folkmote_table_add_real(table, name, &value, (char *)buffer) == FOLKMOTE_BAD_ARGUMENT);
+  CHECK(folkmote_table_add_real(table, name, &value, (char*)buffer) == FOLKMOTE_BAD_ARGUMENT);
   int untouched = 1;
   for (int k = 0; k < spare; ++k) untouched = untouched && buffer[FOLKMOTE_MESSAGE_BYTES + k] == canary;
   CHECK(untouched);
   CHECK(memchr(buffer, 0, FOLKMOTE_MESSAGE_BYTES) != NULL);
-  CHECK(strlen((const char *)buffer) >= FOLKMOTE_MESSAGE_BYTES - 4);
-  CHECK(whole_utf8((const char *)buffer));
+  CHECK(strlen((const char*)buffer) >= FOLKMOTE_MESSAGE_BYTES - 4);
+  CHECK(whole_utf8((const char*)buffer));
   folkmote_table_destroy(table);
 }
 
 /* Messages fit and keep what matters however long the labels are. */
 static void test_long_labels_in_messages(void) {
-  char *label = malloc(long_name + 1);
+  char* label = malloc(long_name + 1);
   memset(label, 'L', long_name);
   label[long_name] = '\0';
-  const char *ids[2] = {label, label};
+  const char* ids[2] = {label, label};
   const int64_t community[2] = {1, 1};
   unsigned char buffer[FOLKMOTE_MESSAGE_BYTES + spare];
   memset(buffer, canary, sizeof buffer);
-  folkmote_table *members = NULL;
-  folkmote_study *study = NULL;
+  folkmote_table* members = NULL;
+  folkmote_study* study = NULL;
   folkmote_table_create(2, &members, NULL);
   folkmote_table_add_integer(members, "community", community, NULL);
   folkmote_table_add_text(members, "member", ids, NULL);
-  CHECK(folkmote_study_create(members, NULL, NULL, NULL, NULL, 0, &study, (char *)buffer) == FOLKMOTE_BAD_DATA);
-  CHECK_SAYS((const char *)buffer, "members: column 'member', row 2 (1 row): ");
+  CHECK(folkmote_study_create(members, NULL, NULL, NULL, NULL, 0, &study, (char*)buffer) == FOLKMOTE_BAD_DATA);
+  CHECK_SAYS((const char*)buffer, "members: column 'member', row 2 (1 row): ");
   CHECK(buffer[FOLKMOTE_MESSAGE_BYTES] == canary && buffer[FOLKMOTE_MESSAGE_BYTES + spare - 1] == canary);
   folkmote_table_destroy(members);
   free(label);
@@ -439,7 +441,7 @@ static void test_long_labels_in_messages(void) {
 
 /* NULL for the message changes nothing but the message; success clears it. */
 static void test_message_is_optional(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   CHECK(folkmote_table_create(-1, &table, NULL) == FOLKMOTE_BAD_ARGUMENT);
   CHECK(folkmote_study_create(NULL, NULL, NULL, NULL, NULL, 0, NULL, NULL) == FOLKMOTE_BAD_ARGUMENT);
   CHECK(folkmote_parameter_bounds(99, NULL, NULL, NULL, NULL, NULL) == FOLKMOTE_BAD_ARGUMENT);

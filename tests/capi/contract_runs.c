@@ -10,8 +10,8 @@ static char message[FOLKMOTE_MESSAGE_BYTES];
 
 /* ---- Threads ---- */
 
-static folkmote_options *options_with_threads(int threads) {
-  folkmote_options *options = NULL;
+static folkmote_options* options_with_threads(int threads) {
+  folkmote_options* options = NULL;
   folkmote_options_create(&options, NULL);
   CHECK_STATUS(folkmote_options_set(options, FOLKMOTE_THREADS, threads, message), FOLKMOTE_OK, message);
   return options;
@@ -19,17 +19,18 @@ static folkmote_options *options_with_threads(int threads) {
 
 /* Digest of every kind of result of nine communities. */
 static uint64_t results_digest(int threads) {
-  folkmote_options *options = options_with_threads(threads);
-  folkmote_study *study = ring_study(9, 12);
-  folkmote_beliefs *beliefs = plain_beliefs(0.4, 1, 2);
-  folkmote_payoff *payoff = plain_payoff();
-  folkmote_equilibrium *equilibrium = NULL;
-  folkmote_scenario *scenario = NULL;
+  folkmote_options* options = options_with_threads(threads);
+  folkmote_study* study = ring_study(9, 12);
+  folkmote_beliefs* beliefs = plain_beliefs(0.4, 1, 2);
+  folkmote_payoff* payoff = plain_payoff();
+  folkmote_equilibrium* equilibrium = NULL;
+  folkmote_scenario* scenario = NULL;
   const double given[2] = {0.1, 0.6}, at_least[2] = {0.25, 0.75};
-  folkmote_table *tables[5] = {NULL};
+  folkmote_table* tables[5] = {NULL};
   folkmote_scenario_create(study, &scenario, NULL);
   folkmote_scenario_thin_links(scenario, 0.5, 3, NULL);
-  CHECK_STATUS(folkmote_equilibrium_create(study, beliefs, payoff, options, &equilibrium, message), FOLKMOTE_OK, message);
+  CHECK_STATUS(folkmote_equilibrium_create(study, beliefs, payoff, options, &equilibrium, message), FOLKMOTE_OK,
+               message);
   folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_MEMBER, &tables[0], NULL);
   folkmote_turnout(equilibrium, 2, given, 2, at_least, options, &tables[1], NULL);
   folkmote_simulate(equilibrium, 0, 20, 1, NULL, FOLKMOTE_BY_COMMUNITY, options, &tables[2], NULL);
@@ -57,9 +58,10 @@ static void test_threads_change_nothing(void) {
   CHECK(results_digest(8) == one);
 }
 
-/* Different handles in different threads at the same time. Threads of POSIX, not of C11: thread sanitizers know no others. */
-static void *session_in_thread(void *wrong) {
-  for (int k = 0; k < 5; ++k) *(int *)wrong += session_digest(NULL) != sound_digest;
+/* Different handles in different threads at the same time. Threads of POSIX, not of C11: thread sanitizers know no
+ * others. */
+static void* session_in_thread(void* wrong) {
+  for (int k = 0; k < 5; ++k) *(int*)wrong += session_digest(NULL) != sound_digest;
   return NULL;
 }
 
@@ -81,8 +83,8 @@ struct watch {
   int64_t done, total;
 };
 
-static int watch_progress(int64_t done, int64_t total, void *user) {
-  struct watch *watch = user;
+static int watch_progress(int64_t done, int64_t total, void* user) {
+  struct watch* watch = user;
   ++watch->calls;
   if (!pthread_equal(pthread_self(), watch->caller)) ++watch->strangers;
   if (done < watch->done || done > total) ++watch->backwards;
@@ -93,11 +95,11 @@ static int watch_progress(int64_t done, int64_t total, void *user) {
 
 enum run { run_equilibrium, run_turnout, run_simulate, run_actions, run_counterfactual, run_count };
 
-static folkmote_status start_equilibrium(const folkmote_study *study, const folkmote_options *options,
-                                         const void **made) {
-  folkmote_beliefs *beliefs = plain_beliefs(0.4, 1, 2);
-  folkmote_payoff *payoff = plain_payoff();
-  folkmote_equilibrium *solved = (folkmote_equilibrium *)&solved;
+static folkmote_status start_equilibrium(const folkmote_study* study, const folkmote_options* options,
+                                         const void** made) {
+  folkmote_beliefs* beliefs = plain_beliefs(0.4, 1, 2);
+  folkmote_payoff* payoff = plain_payoff();
+  folkmote_equilibrium* solved = (folkmote_equilibrium*)&solved;
   const folkmote_status status = folkmote_equilibrium_create(study, beliefs, payoff, options, &solved, message);
   folkmote_payoff_destroy(payoff);
   folkmote_beliefs_destroy(beliefs);
@@ -106,12 +108,13 @@ static folkmote_status start_equilibrium(const folkmote_study *study, const folk
   return status;
 }
 
-static folkmote_status start_table(enum run run, const folkmote_study *study, const folkmote_equilibrium *equilibrium,
-                                   const folkmote_options *options, int64_t draws, folkmote_table **table) {
+static folkmote_status start_table(enum run run, const folkmote_study* study, const folkmote_equilibrium* equilibrium,
+                                   const folkmote_options* options, int64_t draws, folkmote_table** table) {
   const int level = run == run_actions ? FOLKMOTE_BY_MEMBER : FOLKMOTE_BY_COMMUNITY;
   if (run == run_turnout) return folkmote_turnout(equilibrium, 0, NULL, 0, NULL, options, table, message);
-  if (run != run_counterfactual) return folkmote_simulate(equilibrium, 0, draws, 1, NULL, level, options, table, message);
-  folkmote_scenario *scenario = NULL;
+  if (run != run_counterfactual)
+    return folkmote_simulate(equilibrium, 0, draws, 1, NULL, level, options, table, message);
+  folkmote_scenario* scenario = NULL;
   folkmote_scenario_create(study, &scenario, NULL);
   const folkmote_status status = folkmote_counterfactual(equilibrium, scenario, draws, 1, options, table, message);
   folkmote_scenario_destroy(scenario);
@@ -119,29 +122,29 @@ static folkmote_status start_table(enum run run, const folkmote_study *study, co
 }
 
 /* One run of each kind that takes options; what became of the output handle comes back through `made`. */
-static folkmote_status start(enum run run, const folkmote_study *study, const folkmote_equilibrium *equilibrium,
-                             const folkmote_options *options, int64_t draws, const void **made) {
+static folkmote_status start(enum run run, const folkmote_study* study, const folkmote_equilibrium* equilibrium,
+                             const folkmote_options* options, int64_t draws, const void** made) {
   if (run == run_equilibrium) return start_equilibrium(study, options, made);
-  folkmote_table *table = (folkmote_table *)&table;
+  folkmote_table* table = (folkmote_table*)&table;
   const folkmote_status status = start_table(run, study, equilibrium, options, draws, &table);
   if (status == FOLKMOTE_OK) folkmote_table_destroy(table);
   *made = table;
   return status;
 }
 
-static void check_watched(const struct watch *watch) {
+static void check_watched(const struct watch* watch) {
   CHECK(watch->calls > 0);
   CHECK(watch->strangers == 0);
   CHECK(watch->backwards == 0);
 }
 
 static void test_progress(void) {
-  folkmote_study *study = ring_study(5, 10);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_study* study = ring_study(5, 10);
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, 0.4, 1, 2);
   for (int threads = 1; threads <= 4; threads += 3) {
-    folkmote_options *options = options_with_threads(threads);
+    folkmote_options* options = options_with_threads(threads);
     for (int run = 0; run < run_count; ++run) {
-      const void *made = NULL;
+      const void* made = NULL;
       struct watch watch = {.caller = pthread_self()};
       folkmote_options_progress(options, watch_progress, &watch, NULL);
       CHECK_STATUS(start((enum run)run, study, equilibrium, options, 10, &made), FOLKMOTE_OK, message);
@@ -167,13 +170,13 @@ static void test_progress(void) {
 
 /* A run that would take far longer than the test stops within moments of being asked. */
 static void test_cancel_in_the_middle(void) {
-  folkmote_study *study = ring_study(2, 400);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, 0.4, 1, 2);
-  folkmote_options *options = options_with_threads(2);
+  folkmote_study* study = ring_study(2, 400);
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_options* options = options_with_threads(2);
   const enum run runs[3] = {run_simulate, run_counterfactual, run_actions};
   const int64_t draws[3] = {4000000, 4000000, 20000};
   for (int k = 0; k < 3; ++k) {
-    const void *made = NULL;
+    const void* made = NULL;
     struct watch watch = {.caller = pthread_self(), .cancel_at = 2};
     struct timespec before, after;
     folkmote_options_progress(options, watch_progress, &watch, NULL);
@@ -191,21 +194,21 @@ static void test_cancel_in_the_middle(void) {
 
 /* ---- Shards ---- */
 
-static void check_same_row(const folkmote_table *whole, int64_t at, const folkmote_table *part, int64_t row,
-                           const char *const *reals, const char *const *integers) {
+static void check_same_row(const folkmote_table* whole, int64_t at, const folkmote_table* part, int64_t row,
+                           const char* const* reals, const char* const* integers) {
   for (; *reals != NULL; ++reals) CHECK(real_at(whole, *reals, at) == real_at(part, *reals, row));
   for (; *integers != NULL; ++integers) CHECK(integer_at(whole, *integers, at) == integer_at(part, *integers, row));
 }
 
 /* Plays 0..9 at once and as 0..3 and 4..9. Rows run community by community, or play by play for members. */
 static void test_shards(void) {
-  const char *const plays[] = {"obstacle", "turnout_least", "turnout_greatest", NULL};
-  const char *const play_ids[] = {"community", "replication", NULL};
-  const char *const actions[] = {"index", NULL};
-  const char *const action_ids[] = {"community", "member", "replication", "action_least", "action_greatest", NULL};
+  const char* const plays[] = {"obstacle", "turnout_least", "turnout_greatest", NULL};
+  const char* const play_ids[] = {"community", "replication", NULL};
+  const char* const actions[] = {"index", NULL};
+  const char* const action_ids[] = {"community", "member", "replication", "action_least", "action_greatest", NULL};
   enum { communities = 3, size = 4, draws = 10, first = 4 };
-  folkmote_study *study = ring_study(communities, size);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_study* study = ring_study(communities, size);
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, 0.4, 1, 2);
   for (int level = FOLKMOTE_BY_COMMUNITY; level <= FOLKMOTE_BY_MEMBER; ++level) {
     folkmote_table *whole = NULL, *parts[2] = {NULL, NULL};
     folkmote_simulate(equilibrium, 0, draws, 77, NULL, level, NULL, &whole, NULL);
@@ -236,17 +239,17 @@ static void test_shards(void) {
 
 /* Every input is destroyed, in an unkind order, before its product is used. */
 static void test_inputs_may_go(void) {
-  folkmote_study *study = sound_study(); /* its tables are gone already */
-  folkmote_scenario *scenario = NULL;
-  folkmote_table *links = TABLE("community:i 1", "listener:t c", "speaker:t a");
+  folkmote_study* study = sound_study(); /* its tables are gone already */
+  folkmote_scenario* scenario = NULL;
+  folkmote_table* links = TABLE("community:i 1", "listener:t c", "speaker:t a");
   folkmote_scenario_create(study, &scenario, NULL);
   CHECK_STATUS(folkmote_scenario_add_links(scenario, links, 0, message), FOLKMOTE_OK, message);
   folkmote_table_destroy(links);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, 0.4, 1, 2); /* so are beliefs and payoff */
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, 0.4, 1, 2); /* so are beliefs and payoff */
   folkmote_study_destroy(study);
   folkmote_table *compared = NULL, *members = NULL;
   CHECK_STATUS(folkmote_counterfactual(equilibrium, scenario, 4, 1, NULL, &compared, message), FOLKMOTE_OK, message);
-  folkmote_study *edited = NULL;
+  folkmote_study* edited = NULL;
   CHECK_STATUS(folkmote_scenario_study(scenario, &edited, message), FOLKMOTE_OK, message);
   folkmote_scenario_destroy(scenario);
   CHECK_STATUS(folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_MEMBER, &members, message), FOLKMOTE_OK, message);
@@ -264,9 +267,9 @@ static void test_inputs_may_go(void) {
 #define REFUSED(call) CHECK_STATUS(call, FOLKMOTE_BAD_ARGUMENT, message)
 
 static void test_result_arguments(void) {
-  folkmote_study *study = sound_study();
-  folkmote_equilibrium *e = plain_equilibrium(study, 0.4, 1, 2);
-  folkmote_table *table = NULL;
+  folkmote_study* study = sound_study();
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_table* table = NULL;
   const double bad[] = {NAN, INFINITY, -INFINITY}, shares[] = {-0.001, 1.001, NAN};
   for (int k = 0; k < 3; ++k) {
     REFUSED(folkmote_turnout(e, 1, &bad[k], 0, NULL, NULL, &table, message));
@@ -291,9 +294,9 @@ static void test_result_arguments(void) {
 
 static void test_scenario_arguments(void) {
   folkmote_study *study = sound_study(), *other = ring_study(2, 3);
-  folkmote_equilibrium *e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
   folkmote_scenario *s = NULL, *stranger = NULL;
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const double values[3] = {1, 1, 1}, zero = 0;
   folkmote_scenario_create(study, &s, NULL);
   folkmote_scenario_create(other, &stranger, NULL);
@@ -344,11 +347,11 @@ void test_runs(void) {
  * (alpha + beta) / (alpha + 2 beta). The equation is Morris & Shin (2003), "Global games: theory and applications", in
  * Advances in Economics and Econometrics, section 3; its roots were computed with 160 digits. There a member invests
  * above the cutoff when theta - 1 + share is positive, here it acts below the cutoff when share - theta is: with
- * theta -> 1 - theta, mu -> 1 - mu and kappa -> 1 - kappa the equation keeps its form, so that rows carry over as they are.
- * Members without links and of equal weight face that game for every size of the community. */
+ * theta -> 1 - theta, mu -> 1 - mu and kappa -> 1 - kappa the equation keeps its form, so that rows carry over as they
+ * are. Members without links and of equal weight face that game for every size of the community. */
 static const struct published {
   double mu, alpha, beta, least, greatest;
-  const char *verdict;
+  const char* verdict;
 } rows[] = {
     {0, 1, 1, 0.722331260252985, 0.722331260252985, "proved unique"},
     {0.5, 1, 1, 0.5, 0.5, "proved unique"},
@@ -357,10 +360,10 @@ static const struct published {
     {0.5, 20, 30, 0.171458300790623, 0.828541699209377, "several"},
 };
 
-static void test_row(const struct published *row, int size) {
+static void test_row(const struct published* row, int size) {
   const double tolerance = 1e-10;
-  folkmote_study *study = unlinked_study(1, size);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, row->mu, row->alpha, row->beta);
+  folkmote_study* study = unlinked_study(1, size);
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, row->mu, row->alpha, row->beta);
   folkmote_table *members = NULL, *communities = NULL;
   folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_MEMBER, &members, NULL);
   folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_COMMUNITY, &communities, NULL);

@@ -7,11 +7,11 @@
 
 static char message[FOLKMOTE_MESSAGE_BYTES];
 
-static folkmote_table *three_columns(void) {
-  const char *texts[3] = {"x", NULL, ""};
+static folkmote_table* three_columns(void) {
+  const char* texts[3] = {"x", NULL, ""};
   const int64_t integers[3] = {-7, INT64_MIN, INT64_MAX};
   const double reals[3] = {0.1, NAN, -INFINITY};
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   CHECK_STATUS(folkmote_table_create(3, &table, message), FOLKMOTE_OK, message);
   CHECK(message[0] == '\0');
   CHECK_STATUS(folkmote_table_add_text(table, "words", texts, message), FOLKMOTE_OK, message);
@@ -21,8 +21,8 @@ static folkmote_table *three_columns(void) {
 }
 
 static void test_round_trip(void) {
-  folkmote_table *table = three_columns();
-  const char *texts[3];
+  folkmote_table* table = three_columns();
+  const char* texts[3];
   int64_t integers[3];
   double reals[3];
   CHECK(folkmote_table_rows(table) == 3 && folkmote_table_columns(table) == 3);
@@ -40,8 +40,8 @@ static void test_round_trip(void) {
 }
 
 static void test_wrong_column(void) {
-  folkmote_table *table = three_columns();
-  const char *texts[3] = {"kept", "kept", "kept"};
+  folkmote_table* table = three_columns();
+  const char* texts[3] = {"kept", "kept", "kept"};
   int64_t integers[3] = {1, 1, 1};
   double reals[3] = {1, 1, 1};
   CHECK_STATUS(folkmote_table_get_text(table, 1, texts, message), FOLKMOTE_BAD_ARGUMENT, message);
@@ -60,7 +60,7 @@ static void test_wrong_column(void) {
 }
 
 static void test_names(void) {
-  folkmote_table *table = three_columns();
+  folkmote_table* table = three_columns();
   const double reals[3] = {1, 2, 3};
   const uint64_t before = folkmote_table_digest(table);
   CHECK_STATUS(folkmote_table_add_real(table, "words", reals, message), FOLKMOTE_BAD_ARGUMENT, message);
@@ -73,7 +73,7 @@ static void test_names(void) {
 }
 
 static void test_shapes(void) {
-  folkmote_table *table = (folkmote_table *)&table;
+  folkmote_table* table = (folkmote_table*)&table;
   CHECK_STATUS(folkmote_table_create(-1, &table, message), FOLKMOTE_BAD_ARGUMENT, message);
   CHECK(table == NULL);
   CHECK_SAYS(message, "-1");
@@ -87,7 +87,7 @@ static void test_shapes(void) {
   folkmote_table_destroy(table);
 }
 
-static uint64_t digest_of(folkmote_table *table) {
+static uint64_t digest_of(folkmote_table* table) {
   const uint64_t digest = folkmote_table_digest(table);
   folkmote_table_destroy(table);
   return digest;
@@ -107,10 +107,10 @@ static void test_digests(void) {
 }
 
 static void test_values_are_copied(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   double reals[2] = {1, 2};
   char text[2][2] = {"p", "q"};
-  const char *texts[2] = {text[0], text[1]};
+  const char* texts[2] = {text[0], text[1]};
   folkmote_table_create(2, &table, NULL);
   folkmote_table_add_real(table, "a", reals, NULL);
   folkmote_table_add_text(table, "b", texts, NULL);
@@ -123,9 +123,9 @@ static void test_values_are_copied(void) {
 
 /* "A returned `const char *` lives as long as the handle it came from": adding columns must not move names or texts. */
 static void test_strings_stay(void) {
-  folkmote_table *table = TABLE("a:t short");
-  const char *const name = folkmote_table_column_name(table, 0);
-  const char *const text = text_at(table, "a", 0);
+  folkmote_table* table = TABLE("a:t short");
+  const char* const name = folkmote_table_column_name(table, 0);
+  const char* const text = text_at(table, "a", 0);
   const double value = 1;
   char more[16];
   for (int k = 0; k < 100; ++k) {
@@ -151,8 +151,8 @@ void test_tables(void) {
 /* ---- Ids ---- */
 
 /* Status of a study of one community in which two members are linked; the tables are taken over. */
-static folkmote_status link_status(folkmote_table *members, folkmote_table *links) {
-  folkmote_study *study = NULL;
+static folkmote_status link_status(folkmote_table* members, folkmote_table* links) {
+  folkmote_study* study = NULL;
   const folkmote_status status = folkmote_study_create(members, links, NULL, NULL, NULL, 0, &study, message);
   CHECK((study != NULL) == (status == FOLKMOTE_OK));
   folkmote_table_destroy(members);
@@ -162,9 +162,9 @@ static folkmote_status link_status(folkmote_table *members, folkmote_table *link
 }
 
 /* Whether `link` (type and value, "t 7") names the first of two members (type and both values, "i 7 0"). */
-static folkmote_status match_status(const char *member, const char *link) {
+static folkmote_status match_status(const char* member, const char* link) {
   char members[256], speakers[256];
-  const char *listener = member[0] == 't' ? "listener:t other" : "listener:i 0";
+  const char* listener = member[0] == 't' ? "listener:t other" : "listener:i 0";
   snprintf(members, sizeof members, "member:%s", member);
   snprintf(speakers, sizeof speakers, "speaker:%s", link);
   return link_status(TABLE("community:i 1 1", members), TABLE("community:i 1", listener, speakers));
@@ -214,17 +214,31 @@ static void test_empty_ids(void) {
 
 /* Ids come back byte for byte, whatever the bytes. */
 static void test_odd_ids(void) {
-  const char *ids[] = {" ", "a b", "tab\t", "line\nbreak", "quote'\"", "\x01", "\xc3\xa9t\xc3\xa9", "\xf0\x9f\x93\xa3",
-                       "\xff\xfe not UTF-8", "NaN", "NA", "%s%n", "a,b;c", "<b>&amp;", "-", "1e400"};
+  const char* ids[] = {" ",
+                       "a b",
+                       "tab\t",
+                       "line\nbreak",
+                       "quote'\"",
+                       "\x01",
+                       "\xc3\xa9t\xc3\xa9",
+                       "\xf0\x9f\x93\xa3",
+                       "\xff\xfe not UTF-8",
+                       "NaN",
+                       "NA",
+                       "%s%n",
+                       "a,b;c",
+                       "<b>&amp;",
+                       "-",
+                       "1e400"};
   enum { count = sizeof ids / sizeof *ids };
   int64_t community[count] = {0};
   folkmote_table *members = NULL, *table = NULL;
-  folkmote_study *study = NULL;
+  folkmote_study* study = NULL;
   folkmote_table_create(count, &members, NULL);
   folkmote_table_add_integer(members, "community", community, NULL);
   folkmote_table_add_text(members, "member", ids, NULL);
   CHECK_STATUS(folkmote_study_create(members, NULL, NULL, NULL, NULL, 0, &study, message), FOLKMOTE_OK, message);
-  folkmote_equilibrium *equilibrium = plain_equilibrium(study, 0.4, 1, 1);
+  folkmote_equilibrium* equilibrium = plain_equilibrium(study, 0.4, 1, 1);
   CHECK_STATUS(folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_MEMBER, &table, message), FOLKMOTE_OK, message);
   for (int r = 0; r < count; ++r) CHECK(strcmp(text_at(table, "member", r), ids[r]) == 0);
   CHECK(integer_at(table, "community", 0) == 0);
@@ -236,18 +250,18 @@ static void test_odd_ids(void) {
 
 static void test_long_ids(void) {
   enum { length = 100000 };
-  char *ids[2] = {malloc(length + 1), malloc(length + 1)};
+  char* ids[2] = {malloc(length + 1), malloc(length + 1)};
   for (int k = 0; k < 2; ++k) {
     memset(ids[k], 'x', length);
     ids[k][length] = '\0';
   }
   ids[1][length - 1] = 'y';
   const int64_t community[2] = {1, 1};
-  folkmote_table *members = NULL;
-  folkmote_study *study = NULL;
+  folkmote_table* members = NULL;
+  folkmote_study* study = NULL;
   folkmote_table_create(2, &members, NULL);
   folkmote_table_add_integer(members, "community", community, NULL);
-  folkmote_table_add_text(members, "member", (const char *const *)ids, NULL);
+  folkmote_table_add_text(members, "member", (const char* const*)ids, NULL);
   CHECK_STATUS(folkmote_study_create(members, NULL, NULL, NULL, NULL, 0, &study, message), FOLKMOTE_OK, message);
   folkmote_study_destroy(study);
   folkmote_table_destroy(members);

@@ -27,7 +27,7 @@ static void test_numbers_are_pinned(void) {
 static void test_status_words(void) {
   const struct {
     int status;
-    const char *name;
+    const char* name;
   } known[] = {{FOLKMOTE_OK, "FOLKMOTE_OK"},
                {FOLKMOTE_BAD_ARGUMENT, "FOLKMOTE_BAD_ARGUMENT"},
                {FOLKMOTE_BAD_DATA, "FOLKMOTE_BAD_DATA"},
@@ -35,7 +35,7 @@ static void test_status_words(void) {
                {FOLKMOTE_CANCELLED, "FOLKMOTE_CANCELLED"},
                {FOLKMOTE_INTERNAL, "FOLKMOTE_INTERNAL"}};
   for (int status = -3; status <= 300; ++status) {
-    const char *name = "unknown status";
+    const char* name = "unknown status";
     for (size_t k = 0; k < sizeof known / sizeof *known; ++k) {
       if (known[k].status == status) name = known[k].name;
     }

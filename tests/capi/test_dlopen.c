@@ -10,24 +10,24 @@
 int checks_passed = 0;
 int checks_failed = 0;
 
-static void *library;
+static void* library;
 
 /* ISO C has no conversion from an object pointer to a function pointer; POSIX promises that the bytes are the same. */
-static void find(const char *name, void *function_pointer, size_t size) {
-  void *found = dlsym(library, name);
+static void find(const char* name, void* function_pointer, size_t size) {
+  void* found = dlsym(library, name);
   CHECK(found != NULL && size == sizeof found);
   memcpy(function_pointer, &found, sizeof found);
 }
 
-#define FIND(name)                    \
-  __typeof__(folkmote_##name) *name;  \
+#define FIND(name)                   \
+  __typeof__(folkmote_##name)* name; \
   find("folkmote_" #name, &name, sizeof name)
 
 /* Every committed symbol is there, and RTLD_LOCAL kept it out of the program's own names. */
-static void test_symbols(const char *file) {
+static void test_symbols(const char* file) {
   char line[256], name[128];
   int count = 0;
-  FILE *symbols = fopen(file, "r");
+  FILE* symbols = fopen(file, "r");
   if (!CHECK(symbols != NULL)) return;
   while (fgets(line, sizeof line, symbols) != NULL) {
     if (sscanf(line, "%127s", name) != 1) continue;
@@ -54,14 +54,14 @@ static void test_constants(void) {
   CHECK(message_bytes() == FOLKMOTE_MESSAGE_BYTES);
 }
 
-static folkmote_study *tiny_study(void) {
+static folkmote_study* tiny_study(void) {
   FIND(table_create);
   FIND(table_add_integer);
   FIND(table_destroy);
   FIND(study_create);
   const int64_t community[3] = {1, 1, 1}, member[3] = {1, 2, 3};
-  folkmote_table *members = NULL;
-  folkmote_study *study = NULL;
+  folkmote_table* members = NULL;
+  folkmote_study* study = NULL;
   CHECK(table_create(3, &members, NULL) == FOLKMOTE_OK);
   CHECK(table_add_integer(members, "community", community, NULL) == FOLKMOTE_OK);
   CHECK(table_add_integer(members, "member", member, NULL) == FOLKMOTE_OK);
@@ -70,7 +70,7 @@ static folkmote_study *tiny_study(void) {
   return study;
 }
 
-static folkmote_equilibrium *tiny_equilibrium(const folkmote_study *study) {
+static folkmote_equilibrium* tiny_equilibrium(const folkmote_study* study) {
   FIND(beliefs_create);
   FIND(beliefs_set);
   FIND(beliefs_destroy);
@@ -78,9 +78,9 @@ static folkmote_equilibrium *tiny_equilibrium(const folkmote_study *study) {
   FIND(payoff_destroy);
   FIND(equilibrium_create);
   const double mean = 0.5, one = 1;
-  folkmote_beliefs *beliefs = NULL;
-  folkmote_payoff *payoff = NULL;
-  folkmote_equilibrium *equilibrium = NULL;
+  folkmote_beliefs* beliefs = NULL;
+  folkmote_payoff* payoff = NULL;
+  folkmote_equilibrium* equilibrium = NULL;
   CHECK(beliefs_create(&beliefs, NULL) == FOLKMOTE_OK);
   CHECK(beliefs_set(beliefs, FOLKMOTE_PRIOR_MEAN, 1, &mean, NULL) == FOLKMOTE_OK);
   CHECK(beliefs_set(beliefs, FOLKMOTE_PRIOR_PRECISION, 1, &one, NULL) == FOLKMOTE_OK);
@@ -100,10 +100,10 @@ static void test_tiny_study(void) {
   FIND(table_get_text);
   FIND(table_destroy);
   FIND(live_handles);
-  folkmote_study *study = tiny_study();
-  folkmote_equilibrium *equilibrium = tiny_equilibrium(study);
-  folkmote_table *table = NULL;
-  const char *verdict = NULL;
+  folkmote_study* study = tiny_study();
+  folkmote_equilibrium* equilibrium = tiny_equilibrium(study);
+  folkmote_table* table = NULL;
+  const char* verdict = NULL;
   CHECK(equilibrium_table(equilibrium, FOLKMOTE_BY_COMMUNITY, &table, NULL) == FOLKMOTE_OK);
   CHECK(table_rows(table) == 1);
   CHECK(table_get_text(table, 1, &verdict, NULL) == FOLKMOTE_OK);
@@ -114,7 +114,7 @@ static void test_tiny_study(void) {
   CHECK(live_handles() == 0);
 }
 
-int main(int count, char **arguments) {
+int main(int count, char** arguments) {
   if (count != 3) return 2;
   library = dlopen(arguments[1], RTLD_NOW | RTLD_LOCAL);
   if (!CHECK(library != NULL)) {

@@ -18,12 +18,12 @@ static char message[FOLKMOTE_MESSAGE_BYTES];
 /* ---- Refusing one allocation ---- */
 
 /* The C++ runtime inside the library takes its memory from malloc, and the program's own malloc comes first. */
-extern void *__libc_malloc(size_t size);
+extern void* __libc_malloc(size_t size);
 
 static _Atomic long allocations;
 static _Atomic long refused = -1; /* the number of the allocation that fails; -1: none */
 
-void *malloc(size_t size) {
+void* malloc(size_t size) {
   const long number = allocations++;
   return number == refused ? NULL : __libc_malloc(size);
 }
@@ -35,7 +35,7 @@ static void refuse(long number) {
 
 /* ---- Requests that cannot be met ---- */
 
-static void check_too_much(folkmote_status status, const folkmote_table *table) {
+static void check_too_much(folkmote_status status, const folkmote_table* table) {
   CHECK_STATUS(status, FOLKMOTE_OUT_OF_MEMORY, message);
   CHECK_SAYS(message, "memory");
   CHECK(table == NULL);
@@ -43,17 +43,16 @@ static void check_too_much(folkmote_status status, const folkmote_table *table) 
 }
 
 static void test_too_many_draws(void) {
-  folkmote_study *study = sound_study();
-  folkmote_equilibrium *e = plain_equilibrium(study, 0.4, 1, 2);
-  folkmote_scenario *scenario = NULL;
-  folkmote_table *table = NULL;
+  folkmote_study* study = sound_study();
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_scenario* scenario = NULL;
+  folkmote_table* table = NULL;
   /* The products of the last three with 2 communities or 5 members pass 2^63 and 2^64. */
   const int64_t draws[] = {INT64_C(1000000000000), INT64_C(1) << 60, INT64_C(3689348814741910324), INT64_C(1) << 62,
                            INT64_MAX};
   folkmote_scenario_create(study, &scenario, NULL);
   for (size_t k = 0; k < sizeof draws / sizeof *draws; ++k) {
-    folkmote_status status =
-        folkmote_simulate(e, 0, draws[k], 1, NULL, FOLKMOTE_BY_MEMBER, NULL, &table, message);
+    folkmote_status status = folkmote_simulate(e, 0, draws[k], 1, NULL, FOLKMOTE_BY_MEMBER, NULL, &table, message);
     check_too_much(status, table);
     status = folkmote_simulate(e, 0, draws[k], 1, NULL, FOLKMOTE_BY_COMMUNITY, NULL, &table, message);
     check_too_much(status, table);
@@ -66,7 +65,7 @@ static void test_too_many_draws(void) {
 }
 
 static void test_endless_columns(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const double value = 1;
   CHECK(folkmote_table_create(INT64_MAX, &table, NULL) == FOLKMOTE_OK);
   CHECK_STATUS(folkmote_table_add_real(table, "x", &value, message), FOLKMOTE_OUT_OF_MEMORY, message);
@@ -83,10 +82,10 @@ static void limit_memory(size_t bytes) {
 
 /* Pair by pair, 20,000 members ask for gigabytes. A method that needs less may solve; then nothing is out of memory. */
 static void many_members_in_little_memory(void) {
-  folkmote_study *study = unlinked_study(1, 20000);
-  folkmote_beliefs *beliefs = plain_beliefs(0.4, 1, 1);
-  folkmote_payoff *payoff = plain_payoff();
-  folkmote_equilibrium *equilibrium = NULL;
+  folkmote_study* study = unlinked_study(1, 20000);
+  folkmote_beliefs* beliefs = plain_beliefs(0.4, 1, 1);
+  folkmote_payoff* payoff = plain_payoff();
+  folkmote_equilibrium* equilibrium = NULL;
   limit_memory((size_t)256 << 20);
   const folkmote_status status = folkmote_equilibrium_create(study, beliefs, payoff, NULL, &equilibrium, message);
   CHECK(status == FOLKMOTE_OK || status == FOLKMOTE_OUT_OF_MEMORY);
@@ -102,9 +101,9 @@ static void many_members_in_little_memory(void) {
 static void draws_in_little_memory(void) {
   limit_memory((size_t)256 << 20);
   test_too_many_draws();
-  folkmote_study *study = sound_study();
-  folkmote_equilibrium *e = plain_equilibrium(study, 0.4, 1, 2);
-  folkmote_table *table = NULL;
+  folkmote_study* study = sound_study();
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_table* table = NULL;
   check_too_much(folkmote_simulate(e, 0, 5000000, 1, NULL, FOLKMOTE_BY_MEMBER, NULL, &table, message), table);
   folkmote_equilibrium_destroy(e);
   folkmote_study_destroy(study);
@@ -112,10 +111,10 @@ static void draws_in_little_memory(void) {
 
 /* No room for the stacks of so many threads: the run goes on with those it gets, or says that memory ran out. */
 static void threads_in_little_memory(void) {
-  folkmote_study *many = unlinked_study(1024, 2);
-  folkmote_beliefs *b = plain_beliefs(0.4, 1, 1);
-  folkmote_payoff *p = plain_payoff();
-  folkmote_options *o = NULL;
+  folkmote_study* many = unlinked_study(1024, 2);
+  folkmote_beliefs* b = plain_beliefs(0.4, 1, 1);
+  folkmote_payoff* p = plain_payoff();
+  folkmote_options* o = NULL;
   folkmote_equilibrium *alone = NULL, *together = NULL;
   folkmote_options_create(&o, NULL);
   folkmote_options_set(o, FOLKMOTE_THREADS, 1024, NULL);
@@ -156,18 +155,18 @@ static void in_child(void (*test)(void)) {
 
 /* ---- Every allocation in turn ---- */
 
-static folkmote_study *study;
-static folkmote_beliefs *beliefs;
-static folkmote_payoff *payoff;
-static folkmote_options *options;
-static folkmote_equilibrium *equilibrium;
-static folkmote_scenario *scenario;
+static folkmote_study* study;
+static folkmote_beliefs* beliefs;
+static folkmote_payoff* payoff;
+static folkmote_options* options;
+static folkmote_equilibrium* equilibrium;
+static folkmote_scenario* scenario;
 static folkmote_table *members, *links, *broadcasts, *gatherings, *communities, *audience;
 
 /* One call each; an output handle goes back through `made` as a table or is destroyed at once. */
 static folkmote_status call_add_text(void) {
-  const char *const texts[2] = {"a text too long to be kept inside a string object", NULL};
-  folkmote_table *table = NULL;
+  const char* const texts[2] = {"a text too long to be kept inside a string object", NULL};
+  folkmote_table* table = NULL;
   folkmote_status status = folkmote_table_create(2, &table, message);
   if (status == FOLKMOTE_OK) {
     status = folkmote_table_add_text(table, "a column name too long to be kept inside", texts, message);
@@ -178,7 +177,7 @@ static folkmote_status call_add_text(void) {
 }
 
 static folkmote_status call_study(void) {
-  folkmote_study *made = NULL;
+  folkmote_study* made = NULL;
   const folkmote_status status =
       folkmote_study_create(members, links, broadcasts, gatherings, communities, 0, &made, message);
   CHECK((made != NULL) == (status == FOLKMOTE_OK));
@@ -187,7 +186,7 @@ static folkmote_status call_study(void) {
 }
 
 static folkmote_status call_bad_study(void) {
-  folkmote_study *made = NULL;
+  folkmote_study* made = NULL;
   const folkmote_status status = folkmote_study_create(links, NULL, NULL, NULL, NULL, 0, &made, message);
   CHECK(made == NULL);
   return status == FOLKMOTE_BAD_DATA ? FOLKMOTE_OK : status;
@@ -195,9 +194,9 @@ static folkmote_status call_bad_study(void) {
 
 static folkmote_status call_settings(void) {
   const double values[2] = {0.4, 0.4};
-  folkmote_beliefs *made = NULL;
-  folkmote_payoff *made_payoff = NULL;
-  folkmote_options *made_options = NULL;
+  folkmote_beliefs* made = NULL;
+  folkmote_payoff* made_payoff = NULL;
+  folkmote_options* made_options = NULL;
   folkmote_status status = folkmote_beliefs_create(&made, message);
   if (status == FOLKMOTE_OK) status = folkmote_beliefs_set(made, FOLKMOTE_PRIOR_MEAN, 2, values, message);
   if (status == FOLKMOTE_OK) status = folkmote_payoff_create(FOLKMOTE_SHARE_PAYOFF, &made_payoff, message);
@@ -209,77 +208,85 @@ static folkmote_status call_settings(void) {
 }
 
 static folkmote_status call_equilibrium(void) {
-  folkmote_equilibrium *made = NULL;
+  folkmote_equilibrium* made = NULL;
   const folkmote_status status = folkmote_equilibrium_create(study, beliefs, payoff, options, &made, message);
   CHECK((made != NULL) == (status == FOLKMOTE_OK));
   folkmote_equilibrium_destroy(made);
   return status;
 }
 
-static folkmote_status keep(folkmote_status status, folkmote_table *table) {
+static folkmote_status keep(folkmote_status status, folkmote_table* table) {
   CHECK((table != NULL) == (status == FOLKMOTE_OK));
   folkmote_table_destroy(table);
   return status;
 }
 
 static folkmote_status call_summary(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const folkmote_status status = folkmote_study_summary(study, &table, message);
   return keep(status, table);
 }
 
 static folkmote_status call_table(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const folkmote_status status = folkmote_equilibrium_table(equilibrium, FOLKMOTE_BY_MEMBER, &table, message);
   return keep(status, table);
 }
 
 static folkmote_status call_turnout(void) {
   const double given[2] = {0, 1}, at_least = 0.5;
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const folkmote_status status = folkmote_turnout(equilibrium, 2, given, 1, &at_least, options, &table, message);
   return keep(status, table);
 }
 
 static folkmote_status call_plays(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const folkmote_status status =
       folkmote_simulate(equilibrium, 0, 3, 1, NULL, FOLKMOTE_BY_COMMUNITY, options, &table, message);
   return keep(status, table);
 }
 
 static folkmote_status call_actions(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const folkmote_status status =
       folkmote_simulate(equilibrium, 0, 3, 1, NULL, FOLKMOTE_BY_MEMBER, options, &table, message);
   return keep(status, table);
 }
 
 static folkmote_status call_counterfactual(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   const folkmote_status status = folkmote_counterfactual(equilibrium, scenario, 3, 1, options, &table, message);
   return keep(status, table);
 }
 
 /* Edit number `edit` of a scenario. */
-static folkmote_status apply(int edit, folkmote_scenario *to) {
+static folkmote_status apply(int edit, folkmote_scenario* to) {
   const double two = 2;
   switch (edit) {
-    case 0: return folkmote_scenario_cut_links(to, links, 0, message);
-    case 1: return folkmote_scenario_add_links(to, links, 0, message);
-    case 2: return folkmote_scenario_thin_links(to, 0.5, 1, message);
-    case 3: return folkmote_scenario_broadcast(to, audience, 1, message);
-    case 4: return folkmote_scenario_gathering(to, audience, message);
-    case 5: return folkmote_scenario_shift_cost(to, audience, 0.1, message);
-    case 6: return folkmote_scenario_set_beliefs(to, FOLKMOTE_STAKE_SD, 1, &two, message);
-    default: return folkmote_scenario_forward_reports(to, 2, message);
+    case 0:
+      return folkmote_scenario_cut_links(to, links, 0, message);
+    case 1:
+      return folkmote_scenario_add_links(to, links, 0, message);
+    case 2:
+      return folkmote_scenario_thin_links(to, 0.5, 1, message);
+    case 3:
+      return folkmote_scenario_broadcast(to, audience, 1, message);
+    case 4:
+      return folkmote_scenario_gathering(to, audience, message);
+    case 5:
+      return folkmote_scenario_shift_cost(to, audience, 0.1, message);
+    case 6:
+      return folkmote_scenario_set_beliefs(to, FOLKMOTE_STAKE_SD, 1, &two, message);
+    default:
+      return folkmote_scenario_forward_reports(to, 2, message);
   }
 }
 
 /* An edit that fails leaves the scenario as it was. The digest itself needs memory, which it must get here. */
 static folkmote_status call_edits(void) {
-  folkmote_scenario *made = NULL;
-  folkmote_study *edited = NULL;
+  folkmote_scenario* made = NULL;
+  folkmote_study* edited = NULL;
   folkmote_status status = folkmote_scenario_create(study, &made, message);
   for (int edit = 0; edit < 8 && status == FOLKMOTE_OK; ++edit) {
     const long stopped = refused, counted = allocations;
@@ -307,17 +314,24 @@ static folkmote_status call_digests(void) {
 }
 
 static const struct {
-  const char *name;
+  const char* name;
   folkmote_status (*call)(void);
-} calls[] = {{"add text", call_add_text}, {"study", call_study},     {"bad study", call_bad_study},
-             {"settings", call_settings}, {"equilibrium", call_equilibrium},
-             {"summary", call_summary},   {"member table", call_table},
-             {"turnout", call_turnout},   {"plays", call_plays},     {"actions", call_actions},
-             {"edits", call_edits},       {"counterfactual", call_counterfactual},
+} calls[] = {{"add text", call_add_text},
+             {"study", call_study},
+             {"bad study", call_bad_study},
+             {"settings", call_settings},
+             {"equilibrium", call_equilibrium},
+             {"summary", call_summary},
+             {"member table", call_table},
+             {"turnout", call_turnout},
+             {"plays", call_plays},
+             {"actions", call_actions},
+             {"edits", call_edits},
+             {"counterfactual", call_counterfactual},
              {"digests", call_digests}};
 
 /* Refuses allocation 0, 1, 2, ... of one call until the call no longer reaches the one refused. */
-static void refuse_each(const char *name, folkmote_status (*call)(void), int64_t handles) {
+static void refuse_each(const char* name, folkmote_status (*call)(void), int64_t handles) {
   long number = 0;
   for (int more = 1; more && number < 200000; ++number) {
     strcpy(message, "untouched");
@@ -358,7 +372,7 @@ static void test_every_allocation(int threads) {
   folkmote_payoff_destroy(payoff);
   folkmote_beliefs_destroy(beliefs);
   folkmote_study_destroy(study);
-  folkmote_table *tables[] = {members, links, broadcasts, gatherings, communities, audience};
+  folkmote_table* tables[] = {members, links, broadcasts, gatherings, communities, audience};
   for (int t = 0; t < 6; ++t) folkmote_table_destroy(tables[t]);
 }
 

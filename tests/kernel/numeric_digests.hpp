@@ -2,7 +2,10 @@
 // by the test that compares them with the golden file and by the program that writes that file.
 #pragma once
 
-#include "numerics/strict.hpp"
+#include <cstdio>
+#include <string>
+#include <utility>
+#include <vector>
 
 #include "drawn_numbers.hpp"
 #include "numerics/binormal.hpp"
@@ -11,12 +14,8 @@
 #include "numerics/normal.hpp"
 #include "numerics/quadrature.hpp"
 #include "numerics/roots.hpp"
+#include "numerics/strict.hpp"
 #include "numerics/sums.hpp"
-
-#include <cstdio>
-#include <string>
-#include <utility>
-#include <vector>
 
 namespace digests {
 

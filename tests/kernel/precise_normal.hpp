@@ -4,7 +4,6 @@
 
 #include <boost/math/constants/constants.hpp>
 #include <boost/multiprecision/cpp_bin_float.hpp>
-
 #include <cmath>
 #include <vector>
 

@@ -1,7 +1,10 @@
 // The bivariate normal distribution: published tables, exact identities, other libraries and 50-digit quadrature.
-#include "numerics/strict.hpp"
-
+#include <algorithm>
 #include <catch2/catch.hpp>
+#include <cmath>
+#include <string>
+#include <utility>
+#include <vector>
 
 #include "drawn_numbers.hpp"
 #include "numerics/binormal.hpp"
@@ -9,14 +12,9 @@
 #include "numerics/bits.hpp"
 #include "numerics/elementary.hpp"
 #include "numerics/normal.hpp"
+#include "numerics/strict.hpp"
 #include "precise_normal.hpp"
 #include "reference_table.hpp"
-
-#include <algorithm>
-#include <cmath>
-#include <string>
-#include <utility>
-#include <vector>
 
 using namespace folkmote;
 using precise::Real;

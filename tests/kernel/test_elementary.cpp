@@ -1,20 +1,17 @@
 // Exponential, logarithm, arcsine, bit moves, fixed-order sums, roots and quadrature rules.
-#include "numerics/strict.hpp"
-
+#include <algorithm>
+#include <boost/math/quadrature/gauss.hpp>
 #include <catch2/catch.hpp>
+#include <cmath>
+#include <vector>
 
 #include "drawn_numbers.hpp"
 #include "numerics/elementary.hpp"
 #include "numerics/quadrature.hpp"
 #include "numerics/roots.hpp"
+#include "numerics/strict.hpp"
 #include "numerics/sums.hpp"
 #include "precise_normal.hpp"
-
-#include <boost/math/quadrature/gauss.hpp>
-
-#include <algorithm>
-#include <cmath>
-#include <vector>
 
 using namespace folkmote;
 using precise::Real;

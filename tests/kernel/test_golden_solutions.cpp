@@ -2,7 +2,6 @@
 // many threads ran. To approve a change on purpose, run the test program with FOLKMOTE_APPROVE=1: it prints the
 // difference and rewrites golden_solutions.txt.
 #include <catch2/catch.hpp>
-
 #include <cstdlib>
 #include <fstream>
 #include <iostream>
@@ -20,57 +19,57 @@ using namespace folkmote;
 namespace {
 
 std::string hex(std::uint64_t value) {
-    char text[17];
-    std::snprintf(text, sizeof text, "%016llx", static_cast<unsigned long long>(value));
-    return text;
+  char text[17];
+  std::snprintf(text, sizeof text, "%016llx", static_cast<unsigned long long>(value));
+  return text;
 }
 
 std::map<std::string, std::string> digests_now(int threads) {
-    Digest cutoffs, verdicts, turnout, plays, counterfactuals;
-    const Execution execution{threads, {}};
-    for (std::uint64_t seed = 0; seed < 200; ++seed) {
-        const studies::Mixed made = studies::mixed(seed, seed % 4 == 0 ? 0.1 : 1.0);
-        const Solution solution = solve(made.study, made.beliefs, made.payoff, {}, execution);
-        cutoffs.add(std::span<const double>(solution.enclosures[0].least));
-        cutoffs.add(std::span<const double>(solution.enclosures[0].greatest));
-        verdicts.add(static_cast<int>(solution.enclosures[0].verdict)).add(solution.enclosures[0].contraction_bound);
-        if (seed % 10 != 0) continue;
-        const double given[] = {0.2, 0.6}, at_least[] = {0.5};
-        turnout.add(turnout_table(solution, given, at_least, execution).digest());
-        plays.add(action_table(solution, {3, 20, seed, std::nullopt}, execution).digest());
-        Scenario scenario(made.study);
-        scenario.thin_links(0.2, seed);
-        scenario.broadcast(nullptr, 2.0);
-        scenario.forward_reports(2);
-        counterfactuals.add(counterfactual_table(solution, scenario, 40, seed, execution).digest());
-    }
-    return {{"cutoffs", hex(cutoffs.value())},
-            {"verdicts", hex(verdicts.value())},
-            {"turnout", hex(turnout.value())},
-            {"plays", hex(plays.value())},
-            {"counterfactuals", hex(counterfactuals.value())}};
+  Digest cutoffs, verdicts, turnout, plays, counterfactuals;
+  const Execution execution{threads, {}};
+  for (std::uint64_t seed = 0; seed < 200; ++seed) {
+    const studies::Mixed made = studies::mixed(seed, seed % 4 == 0 ? 0.1 : 1.0);
+    const Solution solution = solve(made.study, made.beliefs, made.payoff, {}, execution);
+    cutoffs.add(std::span<const double>(solution.enclosures[0].least));
+    cutoffs.add(std::span<const double>(solution.enclosures[0].greatest));
+    verdicts.add(static_cast<int>(solution.enclosures[0].verdict)).add(solution.enclosures[0].contraction_bound);
+    if (seed % 10 != 0) continue;
+    const double given[] = {0.2, 0.6}, at_least[] = {0.5};
+    turnout.add(turnout_table(solution, given, at_least, execution).digest());
+    plays.add(action_table(solution, {3, 20, seed, std::nullopt}, execution).digest());
+    Scenario scenario(made.study);
+    scenario.thin_links(0.2, seed);
+    scenario.broadcast(nullptr, 2.0);
+    scenario.forward_reports(2);
+    counterfactuals.add(counterfactual_table(solution, scenario, 40, seed, execution).digest());
+  }
+  return {{"cutoffs", hex(cutoffs.value())},
+          {"verdicts", hex(verdicts.value())},
+          {"turnout", hex(turnout.value())},
+          {"plays", hex(plays.value())},
+          {"counterfactuals", hex(counterfactuals.value())}};
 }
 
 std::map<std::string, std::string> digests_kept() {
-    std::ifstream file(reference::path_of("golden_solutions.txt"));
-    std::map<std::string, std::string> kept;
-    for (std::string name, digest; file >> name >> digest;) kept[name] = digest;
-    return kept;
+  std::ifstream file(reference::path_of("golden_solutions.txt"));
+  std::map<std::string, std::string> kept;
+  for (std::string name, digest; file >> name >> digest;) kept[name] = digest;
+  return kept;
 }
 
 }  // namespace
 
 TEST_CASE("solutions, plays and counterfactuals have the golden bits", "[golden]") {
-    const auto now = digests_now(1);
-    if (std::getenv("FOLKMOTE_APPROVE") != nullptr) {
-        const auto kept = digests_kept();
-        std::ofstream file(reference::path_of("golden_solutions.txt"));
-        for (const auto& [name, digest] : now) {
-            const auto old = kept.find(name);
-            if (old == kept.end() || old->second != digest) std::cout << "approved: " << name << " is now " << digest << '\n';
-            file << name << ' ' << digest << '\n';
-        }
+  const auto now = digests_now(1);
+  if (std::getenv("FOLKMOTE_APPROVE") != nullptr) {
+    const auto kept = digests_kept();
+    std::ofstream file(reference::path_of("golden_solutions.txt"));
+    for (const auto& [name, digest] : now) {
+      const auto old = kept.find(name);
+      if (old == kept.end() || old->second != digest) std::cout << "approved: " << name << " is now " << digest << '\n';
+      file << name << ' ' << digest << '\n';
     }
-    CHECK(digests_kept() == now);
-    for (int threads : {2, 3, 8}) CHECK(digests_now(threads) == now);
+  }
+  CHECK(digests_kept() == now);
+  for (int threads : {2, 3, 8}) CHECK(digests_now(threads) == now);
 }

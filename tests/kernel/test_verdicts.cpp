@@ -1,6 +1,5 @@
 // Verdicts on 2,000 random communities, against a search for equilibria from many starts.
 #include <catch2/catch.hpp>
-
 #include <cmath>
 #include <iostream>
 #include <map>

@@ -1,6 +1,5 @@
 // Workers: every task once, progress on the calling thread only, cancel and failure end the run cleanly.
 #include <catch2/catch.hpp>
-
 #include <chrono>
 #include <thread>
 #include <vector>
@@ -30,7 +29,8 @@ TEST_CASE("progress is polled on the calling thread and ends at the total", "[wo
     total = all;
     return false;
   };
-  run_tasks(6, {2, progress}, [](std::int64_t, const StopFlag&) { std::this_thread::sleep_for(std::chrono::milliseconds(60)); });
+  run_tasks(6, {2, progress},
+            [](std::int64_t, const StopFlag&) { std::this_thread::sleep_for(std::chrono::milliseconds(60)); });
   CHECK(!elsewhere);
   CHECK(last == 6);
   CHECK(total == 6);

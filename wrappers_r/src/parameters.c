@@ -1,25 +1,21 @@
 #include "routines.h"
 
-SEXP fm_beliefs_create(void) {
-  FM_MAKES(beliefs, folkmote_beliefs_create(&made, message))
-}
+SEXP fm_beliefs_create(void){FM_MAKES(beliefs, folkmote_beliefs_create(&made, message))}
 
 SEXP fm_beliefs_set(SEXP beliefs, SEXP parameter, SEXP values) {
   int64_t count;
-  const double *numbers = fm_reals_or_null(values, "values", &count);
+  const double* numbers = fm_reals_or_null(values, "values", &count);
   FM_DOES(folkmote_beliefs_set(fm_handle_get(beliefs, &fm_kind_beliefs), fm_whole(parameter, "parameter"), count,
-          numbers, message))
+                               numbers, message))
 }
 
-SEXP fm_payoff_create(SEXP kind) {
-  FM_MAKES(payoff, folkmote_payoff_create(fm_whole(kind, "kind"), &made, message))
-}
+SEXP fm_payoff_create(SEXP kind){FM_MAKES(payoff, folkmote_payoff_create(fm_whole(kind, "kind"), &made, message))}
 
 SEXP fm_payoff_set(SEXP payoff, SEXP parameter, SEXP values) {
   int64_t count;
-  const double *numbers = fm_reals_or_null(values, "values", &count);
-  FM_DOES(folkmote_payoff_set(fm_handle_get(payoff, &fm_kind_payoff), fm_whole(parameter, "parameter"), count,
-          numbers, message))
+  const double* numbers = fm_reals_or_null(values, "values", &count);
+  FM_DOES(folkmote_payoff_set(fm_handle_get(payoff, &fm_kind_payoff), fm_whole(parameter, "parameter"), count, numbers,
+                              message))
 }
 
 /* Value: c(low, high, low_open, high_open). */

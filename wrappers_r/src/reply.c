@@ -1,10 +1,10 @@
-#include "glue.h"
-
 #include <inttypes.h>
 #include <stdio.h>
 
-SEXP fm_reply(int status, const char *message, SEXP value) {
-  const char *names[] = {"status", "message", "value", ""};
+#include "glue.h"
+
+SEXP fm_reply(int status, const char* message, SEXP value) {
+  const char* names[] = {"status", "message", "value", ""};
   PROTECT(value);
   SEXP reply = PROTECT(Rf_mkNamed(VECSXP, names));
   SET_VECTOR_ELT(reply, 0, Rf_ScalarInteger(status));
@@ -20,17 +20,17 @@ SEXP fm_digest(uint64_t digest) {
   return Rf_mkString(text);
 }
 
-double fm_number(SEXP value, const char *what) {
+double fm_number(SEXP value, const char* what) {
   if (!Rf_isReal(value) || XLENGTH(value) != 1) Rf_error("folkmote glue: '%s' must be one double", what);
   return REAL(value)[0];
 }
 
-int fm_whole(SEXP value, const char *what) {
+int fm_whole(SEXP value, const char* what) {
   if (!Rf_isInteger(value) || XLENGTH(value) != 1) Rf_error("folkmote glue: '%s' must be one integer", what);
   return INTEGER(value)[0];
 }
 
-const double *fm_reals_or_null(SEXP values, const char *what, int64_t *count) {
+const double* fm_reals_or_null(SEXP values, const char* what, int64_t* count) {
   *count = 0;
   if (values == R_NilValue) return NULL;
   if (!Rf_isReal(values)) Rf_error("folkmote glue: '%s' must be NULL or double", what);
@@ -38,7 +38,7 @@ const double *fm_reals_or_null(SEXP values, const char *what, int64_t *count) {
   return REAL(values);
 }
 
-const char *fm_text(SEXP value, const char *what) {
+const char* fm_text(SEXP value, const char* what) {
   if (!Rf_isString(value) || XLENGTH(value) != 1) Rf_error("folkmote glue: '%s' must be one string", what);
   return Rf_translateCharUTF8(STRING_ELT(value, 0));
 }

@@ -10,7 +10,6 @@
 // Chebyshev points of the cell, in powers of the distance to the cell's centre. That interpolant is within a
 // small factor of the best possible one (Trefethen 2013, Approximation Theory and Approximation Practice, ch. 16).
 #include <boost/multiprecision/cpp_bin_float.hpp>
-
 #include <cstdio>
 #include <functional>
 #include <string>

@@ -4,7 +4,7 @@
 #include <string.h>
 
 int main(void) {
-  folkmote_table *table = NULL;
+  folkmote_table* table = NULL;
   char message[FOLKMOTE_MESSAGE_BYTES];
   if (strcmp(folkmote_version(), FOLKMOTE_VERSION) != 0) return 1;
   if (folkmote_table_create(0, &table, message) != FOLKMOTE_OK) return 1;
