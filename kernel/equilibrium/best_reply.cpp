@@ -4,6 +4,7 @@
 #include <cmath>
 #include <limits>
 
+#include "equilibrium/reply.hpp"
 #include "numerics/normal.hpp"
 #include "numerics/sums.hpp"
 
@@ -68,33 +69,7 @@ double BestReply::gain(int member, double t, std::span<const double> cutoffs, Li
 }
 
 double BestReply::reply(int member, double from, std::span<const double> cutoffs, Limit at_jump) {
-  double outer = from;
-  double outer_gain = gain(member, outer, cutoffs, at_jump);
-  if (outer_gain == 0.0) return outer;
-  // The slope of the gain is at most -1, so that the root lies between `from` and `from + gain(from)`.
-  double inner = outer + outer_gain;
-  double inner_gain = gain(member, inner, cutoffs, at_jump);
-  const bool from_above = outer_gain < 0.0;
-  const auto on_outer_side = [from_above](double g) { return from_above ? g < 0.0 : g > 0.0; };
-  if (on_outer_side(inner_gain)) return inner;  // by rounding only: the bracket has closed
-  for (int step = 0; std::fabs(outer - inner) > 0.02 * std::fabs(from - inner) && inner_gain != 0.0; ++step) {
-    // False position, aimed a little short of the root so that the outer end moves, then exactly, then a bisection
-    // against one-sided creeping and jumps.
-    const double bisected = 0.5 * (outer + inner);
-    if (bisected == outer || bisected == inner) break;
-    double middle = outer + (inner - outer) * (outer_gain / (outer_gain - inner_gain));
-    if (step % 3 == 0) middle += 0.01 * (outer - middle);
-    if (step % 3 == 2 || middle == outer || middle == inner) middle = bisected;
-    const double middle_gain = gain(member, middle, cutoffs, at_jump);
-    if (on_outer_side(middle_gain)) {
-      outer = middle;
-      outer_gain = middle_gain;
-    } else {
-      inner = middle;
-      inner_gain = middle_gain;
-    }
-  }
-  return inner_gain == 0.0 ? inner : outer;
+  return reply_from(from, [&](double t) { return gain(member, t, cutoffs, at_jump); });
 }
 
 double BestReply::steepest(int member, std::span<const double> cutoffs, std::span<const double> direction,

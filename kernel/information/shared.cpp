@@ -96,15 +96,15 @@ double SharedInformation::covariance_given_obstacle(int i, int j) const {
 }
 
 ConditionalLaw SharedInformation::law(int i, int j) const {
-  const Knowledge& k = knowledge_;
+  return pair_law(knowledge_, i, j, shared(i, j), unshared(i, j), unshared(j, i));
+}
+
+ConditionalLaw pair_law(const Knowledge& k, int i, int j, double shared, double own, double other) {
   if (k.index_variance[i] == 0.0) return {1.0, std::sqrt(k.index_variance[j])};
   const double stake_i = k.stake_sd[i] * k.stake_sd[i];
   const double stake_j = k.stake_sd[j] * k.stake_sd[j];
   const double precisions = k.posterior_precision[i] * k.posterior_precision[j];
-  const double own = unshared(i, j);
-  const double other = unshared(j, i);
-  const double apart =
-      (k.held[i] * k.held[j] / k.prior_precision) * (own + other) + own * k.held[j] + shared(i, j) * other;
+  const double apart = (k.held[i] * k.held[j] / k.prior_precision) * (own + other) + own * k.held[j] + shared * other;
   const double variance =
       stake_j + (k.estimate_variance[j] * stake_i + apart / precisions / precisions) / k.index_variance[i];
   return {(stake_i + own / precisions) / k.index_variance[i], std::sqrt(variance)};

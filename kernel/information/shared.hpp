@@ -13,6 +13,9 @@ struct ConditionalLaw {
   double sd;            // s_ij
 };
 
+/// The law of e_j given e_i from C_ij, own = K_i - C_ij and other = K_j - C_ij.
+ConditionalLaw pair_law(const Knowledge& knowledge, int i, int j, double shared, double own, double other);
+
 /// C_ij and what i holds beyond it, for all pairs of one community.
 class SharedInformation {
  public:

@@ -5,7 +5,7 @@ const CODE = replace(HEADER, r"/\*.*?\*/"s => "")
 
 "The Julia type of a C type of the header."
 function julia_type(c)
-    c = strip(replace(replace(c, r"\s+" => " "), " *" => "*"))
+    c = strip(replace(replace(c, r"\s+" => " "), r" ?\* ?" => "*"))
     plain = Dict("int" => Cint, "int64_t" => Int64, "uint64_t" => UInt64, "size_t" => Csize_t, "double" => Float64,
                  "void" => Cvoid, "folkmote_status" => Cint, "char*" => Ptr{UInt8}, "const char*" => Cstring,
                  "const char*const*" => Ptr{Ptr{UInt8}}, "const char**" => Ptr{Ptr{UInt8}}, "void*" => Ptr{Cvoid},

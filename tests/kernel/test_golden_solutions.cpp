@@ -43,11 +43,19 @@ std::map<std::string, std::string> digests_now(int threads) {
     scenario.forward_reports(2);
     counterfactuals.add(counterfactual_table(solution, scenario, 40, seed, execution).digest());
   }
-  return {{"cutoffs", hex(cutoffs.value())},
-          {"verdicts", hex(verdicts.value())},
-          {"turnout", hex(turnout.value())},
-          {"plays", hex(plays.value())},
-          {"counterfactuals", hex(counterfactuals.value())}};
+  // Communities large enough for the turnout curve: with and without private stakes, and with mixed reach.
+  Digest large;
+  for (const double sigma : {0.0, 0.2}) {
+    drawn::Numbers numbers(9);
+    Payoff payoff;
+    payoff.reach = {sigma > 0.0 ? 0.3 : 0.0};
+    const auto study = studies::one_community(700, studies::preferential(700, 3, numbers), true);
+    const Solution solution = solve(study, studies::beliefs(0.4, 1.0, 2.0, sigma), payoff, {}, execution);
+    large.add(std::span<const double>(solution.enclosures[0].least)).add(solution.enclosures[0].contraction_bound);
+  }
+  return {{"cutoffs", hex(cutoffs.value())},   {"large", hex(large.value())},
+          {"verdicts", hex(verdicts.value())}, {"turnout", hex(turnout.value())},
+          {"plays", hex(plays.value())},       {"counterfactuals", hex(counterfactuals.value())}};
 }
 
 std::map<std::string, std::string> digests_kept() {

@@ -1,0 +1,58 @@
+#pragma once
+// The share game of a large community: gains from the turnout curve, pairs that share information corrected (MODEL.md,
+// section 4). The same F_i(t; kappa) as BestReply at a cost of nodes and overlapping pairs, never of n^2.
+#include "numerics/strict.hpp"
+
+#include <span>
+#include <vector>
+
+#include "equilibrium/best_reply.hpp"
+#include "equilibrium/turnout_curve.hpp"
+#include "payoff/payoff.hpp"
+
+namespace folkmote {
+
+class CurveGame {
+ public:
+  CurveGame(const Knowledge& knowledge, Stakes stakes);
+
+  int size() const { return static_cast<int>(stakes_.benefit.size()); }
+  /// Cutoff of a member when nobody, or everybody in its reach, acts.
+  double lowest(int member) const { return lowest_[member]; }
+  double highest(int member) const { return highest_[member]; }
+
+  /// Sets the cutoffs of everybody else and tabulates the curve.
+  void set(std::span<const double> cutoffs, BestReply::Limit at_jump, const Execution& execution);
+
+  /// F_i(t; cutoffs set).
+  double gain(int member, double t) const;
+  /// The root of F_i from the side on which `from` lies, as BestReply::reply.
+  double reply(int member, double from) const;
+  /// Bound on the error of gain().
+  double error(int member) const;
+
+  /// max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)), never smaller than that.
+  double contraction_bound() const;
+
+  const TurnoutCurve& curve() const { return curve_; }
+
+ private:
+  /// Sums of omega_j P(e_j <= kappa_j | e_i = t) over the pairs of a row.
+  struct Pairs {
+    double heard = 0.0;       // over the members heard
+    double correction = 0.0;  // over all: exact less independent
+  };
+  Pairs pairs(int member, double t) const;
+
+  double prior_mean_;
+  Stakes stakes_;
+  Overlap overlap_;
+  std::vector<double> heard_weight_;  // sum of omega over the members heard
+  std::vector<double> lowest_;
+  std::vector<double> highest_;
+  TurnoutCurve curve_;
+  std::vector<double> cutoffs_;
+  BestReply::Limit limit_ = BestReply::Limit::left;
+};
+
+}  // namespace folkmote

@@ -1,0 +1,209 @@
+#include "equilibrium/large.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <optional>
+
+#include "equilibrium/mixing.hpp"
+
+// Two ways, chosen by the contraction bound.
+//
+// Below 1 there is one equilibrium, so that any way of finding it will do: best replies of everybody at once, accelerated
+// by Anderson mixing. It is accepted only when proved: F_i(k_i + e; k + e) <= 0 and F_i(k_i - e; k - e) >= 0 for every i, errors of
+// the gains included, put an equilibrium between k - e and k + e (Tarski), and there is no other.
+//
+// Otherwise, or when mixing does not get there, monotone best replies from both ends (Milgrom & Roberts 1990), each
+// certified as in end.cpp along k = u -+ e v, v = 1 or the direction of the last steps.
+
+namespace folkmote {
+
+namespace {
+
+constexpr int smallest = 600;
+constexpr double most_pairs = 4e8;
+constexpr int block = 2048;  // members of one task
+
+using Limit = BestReply::Limit;
+
+class LargeSolver {
+ public:
+  LargeSolver(CurveGame& game, const SolveRule& rule, const Execution& execution)
+      : game_(game), rule_(rule), execution_(execution), bound_(game.contraction_bound()) {
+    double scale = 0.0;
+    for (int i = 0; i < game.size(); ++i) {
+      scale = std::max({scale, std::fabs(game.lowest(i)), std::fabs(game.highest(i))});
+    }
+    tolerance_ = std::max(rule.tolerance, 64.0 * 0x1p-52 * scale);
+    slack_ = tolerance_ / 4.0;
+  }
+
+  Enclosure solve() {
+    if (bound_ < 1.0) {
+      if (const auto found = find_unique()) return *found;
+    }
+    return enclose_monotonically();
+  }
+
+ private:
+  /// task(i) for every member, split over workers.
+  template <class Task>
+  void for_members(const Task& task) {
+    const int n = game_.size();
+    run_tasks((n + block - 1) / block, execution_, [&](std::int64_t b, const StopFlag&) {
+      const int first = static_cast<int>(b) * block;
+      for (int i = first; i < std::min(n, first + block); ++i) task(i);
+    });
+  }
+
+  std::vector<double> replies(const std::vector<double>& cutoffs, Limit limit) {
+    game_.set(cutoffs, limit, execution_);
+    std::vector<double> image(cutoffs.size());
+    for_members([&](int i) { image[i] = game_.reply(i, cutoffs[i]); });
+    ++iterations_;
+    return image;
+  }
+
+  /// Whether F_i at cutoffs + offset * direction is at most 0 (sign -1) or at least 0 (sign +1) for every i, errors of the
+  /// gains included.
+  bool signs_agree(const std::vector<double>& cutoffs, const std::vector<double>& direction, double offset, double sign,
+                   Limit limit) {
+    std::vector<double> moved(cutoffs.size());
+    for (std::size_t i = 0; i < moved.size(); ++i) moved[i] = cutoffs[i] + offset * direction[i];
+    game_.set(moved, limit, execution_);
+    std::vector<char> agrees(moved.size());
+    for_members([&](int i) { agrees[i] = sign * game_.gain(i, moved[i]) >= game_.error(i); });
+    ++iterations_;
+    return std::all_of(agrees.begin(), agrees.end(), [](char agree) { return agree != 0; });
+  }
+
+  std::optional<Enclosure> find_unique() {
+    constexpr int most = 200;
+    const int n = game_.size();
+    const std::vector<double> ones(n, 1.0);
+    std::vector<double> cutoffs(n);
+    for (int i = 0; i < n; ++i) cutoffs[i] = 0.5 * (game_.lowest(i) + game_.highest(i));
+    Mixing mixing;
+    double last = std::numeric_limits<double>::infinity();
+    for (int step = 0; step < most && iterations_ < rule_.sweeps; ++step) {
+      const std::vector<double> image = replies(cutoffs, Limit::left);
+      double moved = 0.0;
+      for (int i = 0; i < n; ++i) moved = std::max(moved, std::fabs(image[i] - cutoffs[i]));
+      if (moved <= 0.5 * slack_ && signs_agree(image, ones, slack_, -1.0, Limit::right) &&
+          signs_agree(image, ones, -slack_, +1.0, Limit::left)) {
+        return enclosure_around(image);
+      }
+      if (moved == 0.0) return std::nullopt;
+      if (moved > 4.0 * last) mixing.restart();
+      last = moved;
+      cutoffs = mixing.next(cutoffs, image);
+      for (int i = 0; i < n; ++i) cutoffs[i] = std::clamp(cutoffs[i], game_.lowest(i), game_.highest(i));
+    }
+    return std::nullopt;
+  }
+
+  Enclosure enclosure_around(const std::vector<double>& cutoffs) {
+    Enclosure found;
+    found.least = cutoffs;
+    found.greatest = cutoffs;
+    for (double& cutoff : found.least) cutoff -= slack_;
+    for (double& cutoff : found.greatest) cutoff += slack_;
+    return finished(std::move(found), Verdict::proved_unique);
+  }
+
+  struct MonotoneEnd {
+    std::vector<double> cutoffs;
+    Limit limit;
+    double sign;  // +1: falls to the greatest equilibrium, -1: rises to the least
+    double last = 0.0;
+    std::int64_t sweeps = 0;
+    bool certified = false;
+    bool stalled = false;
+  };
+
+  void advance(MonotoneEnd& end) {
+    const std::vector<double> image = replies(end.cutoffs, end.limit);
+    ++end.sweeps;
+    double largest = 0.0;
+    std::vector<double> steps(image.size());
+    for (std::size_t i = 0; i < image.size(); ++i) {
+      // Errors of the gains may not carry the iterate past the equilibrium: the slope is at most -1.
+      const double error = game_.error(static_cast<int>(i));
+      const double outward = image[i] + end.sign * error;
+      const double next = end.sign > 0.0 ? std::min(outward, end.cutoffs[i]) : std::max(outward, end.cutoffs[i]);
+      steps[i] = std::fabs(next - end.cutoffs[i]);
+      largest = std::max(largest, steps[i]);
+      end.cutoffs[i] = next;
+    }
+    if (largest <= slack_) {
+      end.certified = signs_agree(end.cutoffs, std::vector<double>(steps.size(), 1.0), -end.sign * slack_, end.sign, end.limit);
+      if (!end.certified && largest > 0.0 && largest < 0.1 * slack_) {
+        for (double& step : steps) step = std::max(step / largest, 0.05);
+        end.certified = signs_agree(end.cutoffs, steps, -end.sign * slack_, end.sign, end.limit);
+      }
+      end.stalled = !end.certified && largest == 0.0;
+    }
+    end.last = largest;
+  }
+
+  Enclosure enclose_monotonically() {
+    const int n = game_.size();
+    MonotoneEnd greatest{std::vector<double>(n), Limit::left, +1.0};
+    MonotoneEnd least{std::vector<double>(n), Limit::right, -1.0};
+    for (int i = 0; i < n; ++i) {
+      greatest.cutoffs[i] = game_.highest(i);
+      least.cutoffs[i] = game_.lowest(i);
+    }
+    for (bool moved = true; moved && width(least.cutoffs, greatest.cutoffs) > tolerance_;) {
+      moved = false;
+      for (MonotoneEnd* end : {&greatest, &least}) {
+        if (end->certified || end->stalled || end->sweeps >= rule_.sweeps) continue;
+        advance(*end);
+        moved = true;
+      }
+    }
+    Enclosure found;
+    const double wide = width(least.cutoffs, greatest.cutoffs);
+    Verdict verdict = Verdict::not_converged;
+    if (wide <= tolerance_) verdict = bound_ < 1.0 ? Verdict::proved_unique : Verdict::bracketed;
+    else if (least.certified && greatest.certified && bound_ >= 1.0) verdict = Verdict::several;
+    found.least = std::move(least.cutoffs);
+    found.greatest = std::move(greatest.cutoffs);
+    return finished(std::move(found), verdict);
+  }
+
+  Enclosure finished(Enclosure found, Verdict verdict) const {
+    found.verdict = verdict;
+    found.contraction_bound = bound_;
+    found.width = width(found.least, found.greatest);
+    found.iterations = iterations_;
+    return found;
+  }
+
+  static double width(const std::vector<double>& least, const std::vector<double>& greatest) {
+    double widest = 0.0;
+    for (std::size_t i = 0; i < least.size(); ++i) widest = std::max(widest, greatest[i] - least[i]);
+    return widest;
+  }
+
+  CurveGame& game_;
+  const SolveRule& rule_;
+  const Execution& execution_;
+  double bound_;
+  double tolerance_ = 0.0;
+  double slack_ = 0.0;
+  std::int64_t iterations_ = 0;
+};
+
+}  // namespace
+
+bool is_large(int size) { return size > smallest; }
+
+bool curve_serves(const Knowledge& knowledge) {
+  return Overlap::pairs_at_most(knowledge) <= most_pairs;
+}
+
+Enclosure enclose_large(CurveGame& game, const SolveRule& rule, const Execution& execution) {
+  return LargeSolver(game, rule, execution).solve();
+}
+
+}  // namespace folkmote

@@ -1,0 +1,81 @@
+#pragma once
+// The turnout curve (MODEL.md, section 4): what a member expects of everybody, were nobody to share information with it.
+#include "numerics/strict.hpp"
+
+#include <span>
+#include <vector>
+
+#include "information/overlap.hpp"
+#include "parallel/workers.hpp"
+
+namespace folkmote {
+
+/// sum_j omega_j P(e_j <= kappa_j | e_i = t) over all j, i itself included, every pair taken as independent given theta:
+///   X_i(t) = integral of A(theta) dN(theta; mu + trust_i (t - mu), doubt_i),
+///   A(theta) = sum_j omega_j Phi( (kappa_j - mu - pull_j (theta - mu)) / sqrt(spread_j) ).
+class TurnoutCurve {
+ public:
+  /// Cost of a direct term relative to a node: larger puts more members on the grid.
+  struct Layout {
+    double direct_cost = 4.0;
+  };
+
+  /// Member i asks for t in [lowest_i, highest_i] only.
+  TurnoutCurve(double prior_mean, ThetaLaws laws, std::vector<double> weight, std::span<const double> lowest,
+               std::span<const double> highest, const Layout& layout);
+
+  /// Takes the cutoffs and tabulates the curve. `steps_act`: whether a member who knows its index for certain acts when
+  /// it lies exactly at its cutoff.
+  void tabulate(std::span<const double> cutoffs, bool steps_act, const Execution& execution);
+
+  struct Value {
+    double share;  // X_i(t)
+    double slope;  // dX_i/dt
+  };
+  Value expect(int i, double t) const;
+
+  /// P(e_j <= kappa_j | e_i = t) as if the two shared no information: the argument of Phi.
+  double independent_z(int i, int j, double t) const;
+
+  const ThetaLaws& laws() const { return laws_; }
+  double total() const { return total_; }
+  /// Bound on the error of expect().share: aliasing, truncation and rounding.
+  double error() const { return error_; }
+  std::size_t nodes() const { return nodes_; }
+  /// Members whose expectation is summed over everybody instead.
+  int direct_members() const { return direct_members_; }
+
+ private:
+  struct Grid {
+    double smoothing = 0.0;  // u
+    double step = 0.0;       // h
+    double first = 0.0;
+    double nodes = 0.0;
+  };
+
+  Grid grid_for(double least_doubt, std::span<const double> lowest, std::span<const double> highest) const;
+  void lay_out(std::span<const double> lowest, std::span<const double> highest, const Layout& layout);
+  void bound_error(std::span<const double> lowest, std::span<const double> highest);
+  void tabulate_block(int block, std::span<double> table) const;
+  void add_member(int j, std::span<double> chances, std::span<double> above, std::span<double> z) const;
+  Value on_grid(int i, double centre) const;
+  Value directly(int i, double t) const;
+  double node(std::size_t k) const { return grid_.first + grid_.step * static_cast<double>(k); }
+  int block_size() const;
+
+  double prior_mean_;
+  ThetaLaws laws_;
+  std::vector<double> weight_;
+  double total_;
+  double least_width2_ = 0.0;  // min_j spread_j / pull_j^2
+  Grid grid_;
+  double least_doubt_ = 0.0;  // of the members on the grid
+  std::size_t nodes_ = 0;
+  int direct_members_ = 0;
+  double error_ = 0.0;
+  bool steps_act_ = true;
+  std::vector<double> cutoffs_;
+  std::vector<double> table_;
+};
+
+}  // namespace folkmote
