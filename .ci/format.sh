@@ -16,4 +16,14 @@ while IFS= read -r file; do
   grep -nHP '\t' "$file" && failed=1
   [ -z "$(tail -c 1 "$file")" ] || { echo "$file: no newline at the end"; failed=1; }
 done < <(git ls-files)
+# Contraction is switched off by the first include of every file of the kernel and of the C interface, or by the first
+# include of the header that it starts with.
+while IFS= read -r file; do
+  first=$(grep -m 1 '^#include' "$file")
+  case $file:$first in
+    *strict.hpp:* | *numerics/tables/* | *:*numerics/strict.hpp*) ;;
+    *.cpp:*\"*\"*) ;;
+    *) echo "$file: include numerics/strict.hpp first" && failed=1 ;;
+  esac
+done < <(git ls-files 'kernel/*.hpp' 'kernel/*.cpp' 'capi/*.hpp' 'capi/*.cpp')
 exit $failed

@@ -1,5 +1,7 @@
 #pragma once
 // Counts live handles, for leak tests in every language.
+#include "numerics/strict.hpp"
+
 #include <atomic>
 #include <cstdint>
 

@@ -1,6 +1,8 @@
 #pragma once
 // The one place where C++ exceptions become a status and a sentence. Every exported function that can fail is this
 // guard round one call.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <cstring>
 #include <new>
@@ -10,7 +12,6 @@
 
 #include "community/fault.hpp"
 #include "folkmote.h"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,12 +1,13 @@
 #pragma once
 // What stands behind the opaque handles.
+#include "numerics/strict.hpp"
+
 #include <memory>
 
 #include "capi_count.hpp"
 #include "counterfactual/scenario.hpp"
 #include "equilibrium/solution.hpp"
 #include "folkmote.h"
-#include "numerics/strict.hpp"
 
 struct folkmote_table : folkmote::CountedHandle {
   explicit folkmote_table(folkmote::Table t) : table(std::move(t)) {}

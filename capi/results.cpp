@@ -1,3 +1,5 @@
+#include "numerics/strict.hpp"
+
 #include <limits>
 #include <span>
 

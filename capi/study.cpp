@@ -1,3 +1,5 @@
+#include "numerics/strict.hpp"
+
 #include <memory>
 #include <utility>
 

@@ -1,11 +1,12 @@
 #pragma once
 // Reading columns of the study tables, and saying what is wrong with them.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <string>
 #include <vector>
 
 #include "community/table.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

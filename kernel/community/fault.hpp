@@ -1,9 +1,9 @@
 #pragma once
 // The two ways in which a caller can be wrong. Messages are one sentence: what, where, what to do.
+#include "numerics/strict.hpp"
+
 #include <stdexcept>
 #include <string>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

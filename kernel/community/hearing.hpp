@@ -1,11 +1,12 @@
 #pragma once
 // Whom a member hears: direct links and gatherings together, forwarded over the community's number of hops; nobody
 // twice, never itself (MODEL.md, sections 2 and 7).
+#include "numerics/strict.hpp"
+
 #include <span>
 #include <vector>
 
 #include "community/study.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,12 +1,13 @@
 #pragma once
 // Finding the members that the rows of a table speak of.
+#include "numerics/strict.hpp"
+
 #include <string>
 #include <utility>
 #include <vector>
 
 #include "community/columns.hpp"
 #include "community/study.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,9 +1,10 @@
 #pragma once
 // The parameters of beliefs and payoffs: their numbers, names and ranges, and how values reach members.
+#include "numerics/strict.hpp"
+
 #include <vector>
 
 #include "community/study.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,5 +1,7 @@
 #pragma once
 // What a study holds (MODEL.md, section 1): communities of members, listening links, broadcasts and gatherings.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <memory>
 #include <string>
@@ -7,7 +9,6 @@
 #include <vector>
 
 #include "community/table.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,10 +1,11 @@
+#include "numerics/strict.hpp"
+
 #include <algorithm>
 #include <cmath>
 #include <limits>
 
 #include "community/hearing.hpp"
 #include "community/study.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

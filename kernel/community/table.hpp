@@ -1,5 +1,7 @@
 #pragma once
 // A table of named columns: the form of every input and every result.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <deque>
 #include <limits>
@@ -8,8 +10,6 @@
 #include <string_view>
 #include <variant>
 #include <vector>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,11 +1,12 @@
 #pragma once
 // Prospective counterfactuals: turnout under the scenario beside the baseline, before the state is known, analytic at
 // both ends of the equilibrium set and simulated on common random numbers (MODEL.md, section 7).
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 
 #include "counterfactual/scenario.hpp"
 #include "equilibrium/solution.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

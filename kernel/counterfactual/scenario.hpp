@@ -1,11 +1,12 @@
 #pragma once
 // A scenario: a study with edits, beside the baseline that it came from (MODEL.md, section 7).
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <memory>
 #include <vector>
 
 #include "information/knowledge.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,10 +1,11 @@
 #pragma once
 // Best replies in cutoffs (MODEL.md, section 4), dense form: every member against every other in its reach.
+#include "numerics/strict.hpp"
+
 #include <span>
 #include <vector>
 
 #include "information/shared.hpp"
-#include "numerics/strict.hpp"
 #include "payoff/payoff.hpp"
 
 namespace folkmote {

@@ -9,7 +9,8 @@
 #include "numerics/normal.hpp"
 #include "numerics/sums.hpp"
 
-// S_i(t) = (1 - mix) [ X_i(t) - omega_i Phi(z0_ii) + sum over overlapping j of omega_j (Phi(z_ij) - Phi(z0_ij)) ] / (Omega - omega_i)
+// S_i(t) = (1 - mix) [ X_i(t) - omega_i Phi(z0_ii) + sum over overlapping j of omega_j (Phi(z_ij) - Phi(z0_ij)) ] /
+// (Omega - omega_i)
 //        + mix sum over heard j of omega_j Phi(z_ij) / (sum of omega over heard j),
 // with X_i from the turnout curve, z_ij the exact law of the pair, and z0_ij the law that it would have without shared
 // information: what the curve has counted for it.

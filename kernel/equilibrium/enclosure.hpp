@@ -1,10 +1,11 @@
 #pragma once
 // Enclosing the least and the greatest cutoff equilibrium of one community, and the verdict (MODEL.md, sections 4, 5).
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <vector>
 
 #include "equilibrium/best_reply.hpp"
-#include "numerics/strict.hpp"
 #include "parallel/workers.hpp"
 
 namespace folkmote {

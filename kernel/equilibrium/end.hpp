@@ -1,11 +1,12 @@
 #pragma once
 // One end of the enclosure: the iterate that falls to the greatest equilibrium, or rises to the least.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <vector>
 
 #include "equilibrium/best_reply.hpp"
 #include "equilibrium/linearised.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -9,9 +9,9 @@
 
 namespace folkmote {
 
-/// A term depends on the two members' laws only, and falls in each of pull, spread (of j), trust and doubt (of i). Members
-/// of equal laws are summed as one; where there are too many different laws, neighbours in order share the smallest
-/// values among them, which makes the sum an upper bound.
+/// A term depends on the two members' laws only, and falls in each of pull, spread (of j), trust and doubt (of i).
+/// Members of equal laws are summed as one; where there are too many different laws, neighbours in order share the
+/// smallest values among them, which makes the sum an upper bound.
 class IndependentBound {
  public:
   IndependentBound(const ThetaLaws& laws, std::span<const double> weight);

@@ -8,9 +8,10 @@
 
 // Two ways, chosen by the contraction bound.
 //
-// Below 1 there is one equilibrium, so that any way of finding it will do: best replies of everybody at once, accelerated
-// by Anderson mixing. It is accepted only when proved: F_i(k_i + e; k + e) <= 0 and F_i(k_i - e; k - e) >= 0 for every i, errors of
-// the gains included, put an equilibrium between k - e and k + e (Tarski), and there is no other.
+// Below 1 there is one equilibrium, so that any way of finding it will do: best replies of everybody at once,
+// accelerated by Anderson mixing. It is accepted only when proved: F_i(k_i + e; k + e) <= 0 and F_i(k_i - e; k - e) >=
+// 0 for every i, errors of the gains included, put an equilibrium between k - e and k + e (Tarski), and there is no
+// other.
 //
 // Otherwise, or when mixing does not get there, monotone best replies from both ends (Milgrom & Roberts 1990), each
 // certified as in end.cpp along k = u -+ e v, v = 1 or the direction of the last steps.
@@ -63,8 +64,8 @@ class LargeSolver {
     return image;
   }
 
-  /// Whether F_i at cutoffs + offset * direction is at most 0 (sign -1) or at least 0 (sign +1) for every i, errors of the
-  /// gains included.
+  /// Whether F_i at cutoffs + offset * direction is at most 0 (sign -1) or at least 0 (sign +1) for every i, errors of
+  /// the gains included.
   bool signs_agree(const std::vector<double>& cutoffs, const std::vector<double>& direction, double offset, double sign,
                    Limit limit) {
     std::vector<double> moved(cutoffs.size());
@@ -135,7 +136,8 @@ class LargeSolver {
       end.cutoffs[i] = next;
     }
     if (largest <= slack_) {
-      end.certified = signs_agree(end.cutoffs, std::vector<double>(steps.size(), 1.0), -end.sign * slack_, end.sign, end.limit);
+      end.certified =
+          signs_agree(end.cutoffs, std::vector<double>(steps.size(), 1.0), -end.sign * slack_, end.sign, end.limit);
       if (!end.certified && largest > 0.0 && largest < 0.1 * slack_) {
         for (double& step : steps) step = std::max(step / largest, 0.05);
         end.certified = signs_agree(end.cutoffs, steps, -end.sign * slack_, end.sign, end.limit);
@@ -164,8 +166,10 @@ class LargeSolver {
     Enclosure found;
     const double wide = width(least.cutoffs, greatest.cutoffs);
     Verdict verdict = Verdict::not_converged;
-    if (wide <= tolerance_) verdict = bound_ < 1.0 ? Verdict::proved_unique : Verdict::bracketed;
-    else if (least.certified && greatest.certified && bound_ >= 1.0) verdict = Verdict::several;
+    if (wide <= tolerance_)
+      verdict = bound_ < 1.0 ? Verdict::proved_unique : Verdict::bracketed;
+    else if (least.certified && greatest.certified && bound_ >= 1.0)
+      verdict = Verdict::several;
     found.least = std::move(least.cutoffs);
     found.greatest = std::move(greatest.cutoffs);
     return finished(std::move(found), verdict);
@@ -198,9 +202,7 @@ class LargeSolver {
 
 bool is_large(int size) { return size > smallest; }
 
-bool curve_serves(const Knowledge& knowledge) {
-  return Overlap::pairs_at_most(knowledge) <= most_pairs;
-}
+bool curve_serves(const Knowledge& knowledge) { return Overlap::pairs_at_most(knowledge) <= most_pairs; }
 
 Enclosure enclose_large(CurveGame& game, const SolveRule& rule, const Execution& execution) {
   return LargeSolver(game, rule, execution).solve();

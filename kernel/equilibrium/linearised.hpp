@@ -1,11 +1,12 @@
 #pragma once
 // The game linearised at a vector of cutoffs, and the move that would change every gain as asked.
+#include "numerics/strict.hpp"
+
 #include <optional>
 #include <span>
 #include <vector>
 
 #include "equilibrium/best_reply.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -6,8 +6,8 @@
 #include "numerics/sums.hpp"
 
 // With f = image - present, the next iterate is image - sum_k gamma_k (change of image k), where gamma minimises
-// |f - sum_k gamma_k (change of f k)|. At most five changes are kept, so the normal equations are small; a ridge of 1e-14
-// of their trace keeps them solvable when changes become alike.
+// |f - sum_k gamma_k (change of f k)|. At most five changes are kept, so the normal equations are small; a ridge of
+// 1e-14 of their trace keeps them solvable when changes become alike.
 
 namespace folkmote {
 

@@ -1,10 +1,11 @@
 #pragma once
 // A study solved: the enclosure of every community, with what it was solved from.
+#include "numerics/strict.hpp"
+
 #include <memory>
 #include <vector>
 
 #include "equilibrium/enclosure.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -9,16 +9,20 @@
 #include "numerics/normal.hpp"
 #include "numerics/sums.hpp"
 
-// Normal distributions convolve, so that doubt is split in two parts u + s_i^2 = doubt_i: a part u, common to all, smooths
-// the curve before it is tabulated,
-//   T(theta) = integral A dN(theta, u) = sum_j omega_j Phi( (kappa_j - mu - pull_j (theta - mu)) / sqrt(spread_j + u pull_j^2) ),
-// and the rest is integrated by the trapezoidal rule, X_i(t) = sum_k h T(theta_k) phi((theta_k - m)/s_i)/s_i. However steep
-// a member is, its term of T has width w >= sqrt(u + least spread/pull^2): there is no step that the nodes could miss.
+// Normal distributions convolve, so that doubt is split in two parts u + s_i^2 = doubt_i: a part u, common to all,
+// smooths the curve before it is tabulated,
+//   T(theta) = integral A dN(theta, u) = sum_j omega_j Phi( (kappa_j - mu - pull_j (theta - mu)) / sqrt(spread_j + u
+//   pull_j^2) ),
+// and the rest is integrated by the trapezoidal rule, X_i(t) = sum_k h T(theta_k) phi((theta_k - m)/s_i)/s_i. However
+// steep a member is, its term of T has width w >= sqrt(u + least spread/pull^2): there is no step that the nodes could
+// miss.
 //
 // Error (Poisson summation; Trefethen & Weideman 2014, SIAM Review 56:385, sections 3, 5). Completing the square,
-//   integral Phi((a - x)/w) N(x; m, s^2) exp(-i x f) dx = exp(-i f m - f^2 s^2/2) Phi( (a - m + i f s^2)/sqrt(w^2 + s^2) ),
-// and |Phi(x + i y)| <= 1 + phi(x) integral_0^y exp(v^2/2) dv <= 1 + 0.31 exp(y^2/2) (Dawson's integral is at most 0.5411).
-// At the frequencies f = 2 pi k/h, k != 0, that the rule cannot tell from 0, this sums to less than 2.7 exp(-E) with
+//   integral Phi((a - x)/w) N(x; m, s^2) exp(-i x f) dx = exp(-i f m - f^2 s^2/2) Phi( (a - m + i f s^2)/sqrt(w^2 +
+//   s^2) ),
+// and |Phi(x + i y)| <= 1 + phi(x) integral_0^y exp(v^2/2) dv <= 1 + 0.31 exp(y^2/2) (Dawson's integral is at most
+// 0.5411). At the frequencies f = 2 pi k/h, k != 0, that the rule cannot tell from 0, this sums to less than 2.7
+// exp(-E) with
 //   E = (2 pi/h)^2 H/2,   H = w^2 s^2/(w^2 + s^2).
 // h is set for E = 36: 6.3e-16 of the total weight. H is largest where w^2 and s^2 are alike, which decides u.
 //
@@ -105,8 +109,7 @@ void TurnoutCurve::bound_error(std::span<const double> lowest, std::span<const d
   const double furthest = std::max(std::fabs(grid_.first), std::fabs(node(nodes_)));
   const double width = std::sqrt((std::isinf(least_width2_) ? 0.0 : least_width2_) + std::min(grid_.smoothing, narrow));
   const double in_z = nodes_ > 0 || !std::isinf(least_width2_) ? 6.0 * (size + furthest) / width : 0.0;
-  const double in_sums = 16.0 + chunk + static_cast<double>(nodes_) / 8.0 +
-                         static_cast<double>(block_size()) / chunk;
+  const double in_sums = 16.0 + chunk + static_cast<double>(nodes_) / 8.0 + static_cast<double>(block_size()) / chunk;
   error_ = total_ * (aliasing + 2.0 * 5.3e-17 + unit * (in_sums + 0.4 * std::min(in_z, 1e12)));
 }
 
@@ -147,8 +150,8 @@ void TurnoutCurve::tabulate_block(int block, std::span<double> table) const {
   }
 }
 
-/// Adds one member's chance of acting at every node: 1 below the nodes where it is in doubt, 0 above them. `above[k]` takes
-/// the weight of those for whom k is the first node in doubt.
+/// Adds one member's chance of acting at every node: 1 below the nodes where it is in doubt, 0 above them. `above[k]`
+/// takes the weight of those for whom k is the first node in doubt.
 void TurnoutCurve::add_member(int j, std::span<double> chances, std::span<double> above, std::span<double> z) const {
   const double margin = cutoffs_[j] - prior_mean_;
   const double pull = laws_.pull[j];

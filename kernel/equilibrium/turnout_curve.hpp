@@ -1,5 +1,6 @@
 #pragma once
-// The turnout curve (MODEL.md, section 4): what a member expects of everybody, were nobody to share information with it.
+// The turnout curve (MODEL.md, section 4): what a member expects of everybody, were nobody to share information with
+// it.
 #include "numerics/strict.hpp"
 
 #include <span>
@@ -10,7 +11,8 @@
 
 namespace folkmote {
 
-/// sum_j omega_j P(e_j <= kappa_j | e_i = t) over all j, i itself included, every pair taken as independent given theta:
+/// sum_j omega_j P(e_j <= kappa_j | e_i = t) over all j, i itself included, every pair taken as independent given
+/// theta:
 ///   X_i(t) = integral of A(theta) dN(theta; mu + trust_i (t - mu), doubt_i),
 ///   A(theta) = sum_j omega_j Phi( (kappa_j - mu - pull_j (theta - mu)) / sqrt(spread_j) ).
 class TurnoutCurve {

@@ -1,9 +1,10 @@
 #pragma once
 // Proofs that a box of cutoffs holds at most one equilibrium (MODEL.md, section 5).
+#include "numerics/strict.hpp"
+
 #include <span>
 
 #include "equilibrium/best_reply.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,12 +1,13 @@
 #pragma once
 // What members know (MODEL.md, section 2): information held, pooled estimates and their variances.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <limits>
 #include <vector>
 
 #include "community/parameters.hpp"
 #include "community/study.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

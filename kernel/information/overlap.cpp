@@ -5,8 +5,8 @@
 
 #include "information/two_sum.hpp"
 
-// A row is gathered speaker by speaker: C_ij > 0 only where j holds a signal that i holds, or sits in one of i's audiences.
-// The work is the number of such meetings, and one scratch array of n sums serves all rows.
+// A row is gathered speaker by speaker: C_ij > 0 only where j holds a signal that i holds, or sits in one of i's
+// audiences. The work is the number of such meetings, and one scratch array of n sums serves all rows.
 //
 // Groups are expanded into pairs for now: a broadcast heard by everybody has n^2 of them, and callers must ask
 // pairs_at_most first.
@@ -49,8 +49,12 @@ Holders holders_of(const Knowledge& knowledge) {
 class RowBuilder {
  public:
   explicit RowBuilder(const Knowledge& knowledge)
-      : knowledge_(knowledge), holders_(holders_of(knowledge)), broadcasts_of_(knowledge.size), sums_(knowledge.size),
-        seen_(knowledge.size, 0), held_(knowledge.size) {
+      : knowledge_(knowledge),
+        holders_(holders_of(knowledge)),
+        broadcasts_of_(knowledge.size),
+        sums_(knowledge.size),
+        seen_(knowledge.size, 0),
+        held_(knowledge.size) {
     for (std::size_t q = 0; q < knowledge.broadcasts.size(); ++q) {
       for (int i : knowledge.broadcasts[q].audience) broadcasts_of_[i].push_back(static_cast<int>(q));
     }

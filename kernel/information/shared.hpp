@@ -1,9 +1,10 @@
 #pragma once
 // Shared information (MODEL.md, section 2) in its dense form, and the laws of pairs of indices that follow from it.
+#include "numerics/strict.hpp"
+
 #include <vector>
 
 #include "information/knowledge.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

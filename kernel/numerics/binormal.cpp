@@ -1,3 +1,5 @@
+#include "numerics/strict.hpp"
+
 #include "numerics/binormal.hpp"
 
 #include <algorithm>
@@ -5,7 +7,6 @@
 
 #include "numerics/binormal_parts.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/tables/legendre_rows.hpp"
 
 namespace folkmote {

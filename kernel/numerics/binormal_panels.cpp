@@ -8,13 +8,14 @@
 //   - what is left beyond x is at most f(x)/|(log f)'(x)|, which tells when to stop.
 // Everything is held relative to the mode x0 (v = x - x0), with k - rho x0 to twice the precision. A panel is no
 // wider than six times the local scale: s where Phi is not yet 1, and 1 on the plateau beyond.
+#include "numerics/strict.hpp"
+
 #include <algorithm>
 #include <array>
 
 #include "numerics/binormal_parts.hpp"
 #include "numerics/elementary.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/tables/legendre_rows.hpp"
 #include "numerics/two.hpp"
 

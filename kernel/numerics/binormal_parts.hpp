@@ -1,10 +1,11 @@
 // The three ways in which binormal_cdf computes: each has a file of its own.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cmath>
 
 #include "numerics/bits.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote::binormal {
 

@@ -4,10 +4,11 @@
 // (2004, Statistics and Computing 14:251-260) substitutes r = sin t, which removes a square root. Here u = tan(t/2) in
 // addition, r = 2u/(1+u^2): no sine is needed and the singular point r = 1 stays further from the interval:
 //   (1/pi) * integral from 0 to U of exp(-(h^2 + k^2 - 2hkr)/(2(1-r^2))) du/(1+u^2),  U = rho/(1 + sqrt(1-rho^2)).
+#include "numerics/strict.hpp"
+
 #include <cstddef>
 
 #include "numerics/binormal_parts.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/tables/legendre_rows.hpp"
 #include "numerics/two.hpp"
 

@@ -8,6 +8,8 @@
 // and the moments m_j = c^-(2j+1) * integral of v^(2j) exp(-A/v^2) come by parts, with a = A/c^2:
 //   m_0 = exp(-a) - 2 sqrt(pi a) Phi(-sqrt(2a)),   (2j+1) m_j = exp(-a) - 2a m_(j-1).
 // For negative rho, h+k and h-k change places.
+#include "numerics/strict.hpp"
+
 #include <array>
 #include <cstddef>
 #include <utility>
@@ -15,7 +17,6 @@
 #include "numerics/binormal_parts.hpp"
 #include "numerics/elementary.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote::binormal {
 namespace {

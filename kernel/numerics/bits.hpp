@@ -1,11 +1,11 @@
 // Moves of bits between doubles and integers, and exact powers of two.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <bit>
 #include <cstdint>
 #include <limits>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

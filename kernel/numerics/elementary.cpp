@@ -1,9 +1,10 @@
+#include "numerics/strict.hpp"
+
 #include "numerics/elementary.hpp"
 
 #include <cmath>
 #include <cstddef>
 
-#include "numerics/strict.hpp"
 #include "numerics/tables/elementary_rows.hpp"
 #include "numerics/two.hpp"
 

@@ -5,10 +5,11 @@
 // Infinities, NaN, zeros and subnormal numbers follow the usual conventions.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <span>
 
 #include "numerics/bits.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,10 +1,11 @@
+#include "numerics/strict.hpp"
+
 #include "numerics/normal.hpp"
 
 #include <cstddef>
 
 #include "numerics/normal_tail.hpp"
 #include "numerics/rows.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/two.hpp"
 
 namespace folkmote {

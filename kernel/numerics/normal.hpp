@@ -5,9 +5,9 @@
 // subnormal results included; density below 2, quantile below 3, the other two below 4.
 #pragma once
 
-#include <span>
-
 #include "numerics/strict.hpp"
+
+#include <span>
 
 namespace folkmote {
 

@@ -4,6 +4,8 @@
 // smooth function of q^2, q = p - 1/2, which keeps full relative precision where the quantile is near zero; in
 // the tails x is a smooth function of sqrt(-log p). Here each of the two is a row table in place of a rational
 // function.
+#include "numerics/strict.hpp"
+
 #include <array>
 #include <cmath>
 #include <cstddef>
@@ -11,7 +13,6 @@
 #include "numerics/elementary.hpp"
 #include "numerics/normal.hpp"
 #include "numerics/rows.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/tables/quantile_rows.hpp"
 #include "numerics/two.hpp"
 

@@ -1,8 +1,9 @@
 // The far tail of the normal distribution, shared by the distribution function and its logarithm.
 #pragma once
 
-#include "numerics/elementary.hpp"
 #include "numerics/strict.hpp"
+
+#include "numerics/elementary.hpp"
 #include "numerics/tables/normal_rows.hpp"
 
 namespace folkmote::tail {

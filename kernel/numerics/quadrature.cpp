@@ -4,12 +4,13 @@
 // zeros are isolated by counting sign changes (Sturm; Wilkinson 1965, The Algebraic Eigenvalue Problem, 5.38), then
 // polished by Newton's method; the weights are mass / (p_0^2 + ... + p_(n-1)^2) (Szego 1939, section 3.4). Only
 // + - * / and sqrt are used.
+#include "numerics/strict.hpp"
+
 #include "numerics/quadrature.hpp"
 
 #include <cmath>
 
 #include "numerics/bits.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 namespace {

@@ -1,10 +1,10 @@
 // Gaussian quadrature rules computed at run time with the same bits everywhere.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cstddef>
 #include <vector>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -3,10 +3,11 @@
 // The function may jump downwards: the point of the jump is then the answer, for no bracket ever loses it.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <utility>
 
 #include "numerics/bits.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

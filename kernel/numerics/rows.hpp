@@ -1,9 +1,9 @@
 // Evaluation of one row of a piecewise polynomial (see tables/make_tables.cpp).
 #pragma once
 
-#include <cstddef>
-
 #include "numerics/strict.hpp"
+
+#include <cstddef>
 
 namespace folkmote {
 

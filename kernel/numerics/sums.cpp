@@ -1,8 +1,9 @@
+#include "numerics/strict.hpp"
+
 #include "numerics/sums.hpp"
 
 #include <cstddef>
 
-#include "numerics/strict.hpp"
 #include "numerics/two.hpp"
 
 namespace folkmote {

@@ -5,9 +5,9 @@
 // The order is part of the project's promise: another lane count would change the last bits of most sums.
 #pragma once
 
-#include <span>
-
 #include "numerics/strict.hpp"
+
+#include <span>
 
 namespace folkmote {
 

@@ -3,10 +3,11 @@
 // scalar operation does, so results do not depend on the target.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cstring>
 
 #include "numerics/bits.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/tables/elementary_rows.hpp"
 
 namespace folkmote {

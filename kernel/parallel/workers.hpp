@@ -1,10 +1,10 @@
 #pragma once
 // Workers on threads, with progress and cancel polled on the calling thread only.
+#include "numerics/strict.hpp"
+
 #include <atomic>
 #include <cstdint>
 #include <functional>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,10 +1,11 @@
 #pragma once
 // What acting pays (MODEL.md, section 3): the share payoff  b_i S_i - c_i - (theta + nu_i).
+#include "numerics/strict.hpp"
+
 #include <vector>
 
 #include "community/parameters.hpp"
 #include "information/knowledge.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

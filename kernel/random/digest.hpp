@@ -14,14 +14,14 @@
 // Lengths come first and tags differ, so ("ab", "c") and ("a", "bc") are different inputs.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <bit>
 #include <concepts>
 #include <cstdint>
 #include <limits>
 #include <span>
 #include <string_view>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

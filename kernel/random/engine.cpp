@@ -1,9 +1,9 @@
+#include "numerics/strict.hpp"
+
 #include "random/engine.hpp"
 
 #include <array>
 #include <cstddef>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 namespace {

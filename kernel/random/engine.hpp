@@ -13,11 +13,11 @@
 // where Brown's doubling costs four multiplications for each bit.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <pcg_random.hpp>
 #include <type_traits>
-
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

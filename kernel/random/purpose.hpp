@@ -5,9 +5,9 @@
 // a purpose is dropped. New ones go into the gap of their band.
 #pragma once
 
-#include <cstdint>
-
 #include "numerics/strict.hpp"
+
+#include <cstdint>
 
 namespace folkmote {
 

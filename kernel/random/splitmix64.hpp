@@ -5,9 +5,9 @@
 // checked against published outputs.
 #pragma once
 
-#include <cstdint>
-
 #include "numerics/strict.hpp"
+
+#include <cstdint>
 
 namespace folkmote {
 

@@ -1,11 +1,12 @@
 // From the key of a stream to the 256 bits that start its generator.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <array>
 #include <cstddef>
 #include <cstdint>
 
-#include "numerics/strict.hpp"
 #include "random/purpose.hpp"
 #include "random/splitmix64.hpp"
 

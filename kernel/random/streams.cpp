@@ -1,10 +1,11 @@
+#include "numerics/strict.hpp"
+
 #include "random/streams.hpp"
 
 #include <limits>
 #include <stdexcept>
 
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 namespace {

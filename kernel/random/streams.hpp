@@ -1,10 +1,11 @@
 // Keyed streams of random numbers whose every number has an address.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <span>
 
-#include "numerics/strict.hpp"
 #include "random/engine.hpp"
 #include "random/stream_key.hpp"
 

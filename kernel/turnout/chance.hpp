@@ -1,9 +1,10 @@
 #pragma once
 // P(A >= q): the chance that turnout reaches a threshold.
+#include "numerics/strict.hpp"
+
 #include <span>
 
 #include "information/shared.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

@@ -1,10 +1,11 @@
 #pragma once
 // Analytic turnout given cutoffs (MODEL.md, section 6): chances, expectation, variance, the curve given theta.
+#include "numerics/strict.hpp"
+
 #include <span>
 #include <vector>
 
 #include "information/shared.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

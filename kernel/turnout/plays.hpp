@@ -1,12 +1,13 @@
 #pragma once
 // Seeded plays of one community: the world is drawn, members pool what they hear, and act on their cutoffs.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <optional>
 #include <span>
 #include <vector>
 
 #include "information/knowledge.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

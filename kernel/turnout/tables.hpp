@@ -1,12 +1,13 @@
 #pragma once
 // What a solved study is asked for, as tables.
+#include "numerics/strict.hpp"
+
 #include <cstdint>
 #include <optional>
 #include <span>
 
 #include "community/table.hpp"
 #include "equilibrium/solution.hpp"
-#include "numerics/strict.hpp"
 
 namespace folkmote {
 

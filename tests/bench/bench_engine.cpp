@@ -1,5 +1,5 @@
-// The equilibrium engine on preferential attachment networks (m = 3, alpha = 1, beta = 2, sigma = 0.1): time, sweeps and
-// memory by size, and the dense form beside it where that is feasible. Not a test: prints a table.
+// The equilibrium engine on preferential attachment networks (m = 3, alpha = 1, beta = 2, sigma = 0.1): time, sweeps
+// and memory by size, and the dense form beside it where that is feasible. Not a test: prints a table.
 //     bench_engine [largest size] [threads]
 #include "numerics/strict.hpp"
 
@@ -86,7 +86,8 @@ int main(int argc, char** argv) {
   std::setvbuf(stdout, nullptr, _IOLBF, 0);
   const int largest = argc > 1 ? std::atoi(argv[1]) : 100000;
   const int threads = argc > 2 ? std::atoi(argv[2]) : 2;
-  std::printf("  members  prepare    total  sweeps  nodes  direct  peak GB  verdict    (seconds, %d threads)\n", threads);
+  std::printf("  members  prepare    total  sweeps  nodes  direct  peak GB  verdict    (seconds, %d threads)\n",
+              threads);
   for (int size : {1000, 2000, 10000, 100000, 1000000}) {
     if (size <= largest) measure(size, threads);
   }

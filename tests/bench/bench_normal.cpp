@@ -1,5 +1,7 @@
 // Speed of the normal and bivariate normal functions, as ratios within one run. Not a test: prints a table.
 //     bench_normal [values] [rounds]
+#include "numerics/strict.hpp"
+
 #include <algorithm>
 #include <chrono>
 #include <cmath>
@@ -11,7 +13,6 @@
 #include "numerics/binormal.hpp"
 #include "numerics/elementary.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/sums.hpp"
 
 namespace {

@@ -2,6 +2,8 @@
 // machine tests the same numbers.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cmath>
 #include <cstdint>
 

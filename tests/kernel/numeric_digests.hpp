@@ -2,6 +2,8 @@
 // by the test that compares them with the golden file and by the program that writes that file.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <cstdio>
 #include <string>
 #include <utility>
@@ -14,7 +16,6 @@
 #include "numerics/normal.hpp"
 #include "numerics/quadrature.hpp"
 #include "numerics/roots.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/sums.hpp"
 
 namespace digests {

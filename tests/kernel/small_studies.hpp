@@ -1,6 +1,8 @@
 // Small studies for tests: one community made from a list of links, and random ones with every feature mixed.
 #pragma once
 
+#include "numerics/strict.hpp"
+
 #include <algorithm>
 #include <cstdint>
 #include <limits>

@@ -1,4 +1,6 @@
 // The bivariate normal distribution: published tables, exact identities, other libraries and 50-digit quadrature.
+#include "numerics/strict.hpp"
+
 #include <algorithm>
 #include <catch2/catch.hpp>
 #include <cmath>
@@ -12,7 +14,6 @@
 #include "numerics/bits.hpp"
 #include "numerics/elementary.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 #include "precise_normal.hpp"
 #include "reference_table.hpp"
 

@@ -1,10 +1,11 @@
 // The numerical functions give the golden bits, whatever compiled them.
+#include "numerics/strict.hpp"
+
 #include <catch2/catch.hpp>
 #include <fstream>
 #include <map>
 
 #include "numeric_digests.hpp"
-#include "numerics/strict.hpp"
 #include "reference_table.hpp"
 
 TEST_CASE("results have the golden bits", "[numerics][bits][golden]") {

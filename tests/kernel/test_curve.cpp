@@ -1,6 +1,5 @@
 // The turnout-curve engine against the dense form.
 #include <catch2/catch.hpp>
-
 #include <cmath>
 
 #include "equilibrium/large.hpp"
@@ -57,8 +56,10 @@ void check_cutoffs(const Compared& c) {
     CHECK(std::fabs(c.curve_found.greatest[i] - c.dense_found.greatest[i]) < 1e-10);
   }
   // The dense form may prove more: on the finished enclosure.
-  if (c.dense_found.verdict == Verdict::several) CHECK(c.curve_found.verdict == Verdict::several);
-  else CHECK(c.curve_found.verdict != Verdict::several);
+  if (c.dense_found.verdict == Verdict::several)
+    CHECK(c.curve_found.verdict == Verdict::several);
+  else
+    CHECK(c.curve_found.verdict != Verdict::several);
   const double dense_bound = c.dense.contraction_bound();
   if (std::isfinite(dense_bound)) CHECK(c.curve_found.contraction_bound >= dense_bound * (1.0 - 1e-12));
   if (std::isfinite(dense_bound)) CHECK(c.curve_found.contraction_bound <= dense_bound * (1.0 + 1e-6) + 1e-9);
@@ -67,7 +68,8 @@ void check_cutoffs(const Compared& c) {
 Case attachment(int size, double sigma, double beta, std::uint64_t seed, double mix = 0.0) {
   drawn::Numbers numbers(seed);
   Case c{studies::one_community(size, studies::preferential(size, 3, numbers), true),
-         studies::beliefs(numbers.between(0.0, 1.0), 1.0, beta, sigma), {}};
+         studies::beliefs(numbers.between(0.0, 1.0), 1.0, beta, sigma),
+         {}};
   c.payoff.reach = {mix};
   return c;
 }
@@ -133,5 +135,6 @@ TEST_CASE("solving takes the curve for a large community, with the same bytes fo
 
 TEST_CASE("a large community's run can be cancelled", "[curve]") {
   const Case c = attachment(20000, 0.1, 2.0, 5);
-  CHECK_THROWS_AS(solve(c.study, c.beliefs, c.payoff, {}, {2, [](std::int64_t, std::int64_t) { return true; }}), std::exception);
+  CHECK_THROWS_AS(solve(c.study, c.beliefs, c.payoff, {}, {2, [](std::int64_t, std::int64_t) { return true; }}),
+                  std::exception);
 }

@@ -1,4 +1,6 @@
 // Exponential, logarithm, arcsine, bit moves, fixed-order sums, roots and quadrature rules.
+#include "numerics/strict.hpp"
+
 #include <algorithm>
 #include <boost/math/quadrature/gauss.hpp>
 #include <catch2/catch.hpp>
@@ -9,7 +11,6 @@
 #include "numerics/elementary.hpp"
 #include "numerics/quadrature.hpp"
 #include "numerics/roots.hpp"
-#include "numerics/strict.hpp"
 #include "numerics/sums.hpp"
 #include "precise_normal.hpp"
 

@@ -1,6 +1,8 @@
 // Solved communities, their turnout, plays and counterfactuals have the golden bits, whatever compiled them and however
 // many threads ran. To approve a change on purpose, run the test program with FOLKMOTE_APPROVE=1: it prints the
 // difference and rewrites golden_solutions.txt.
+#include "numerics/strict.hpp"
+
 #include <catch2/catch.hpp>
 #include <cstdlib>
 #include <fstream>

@@ -1,4 +1,6 @@
 // The normal distribution: published tables, other libraries, and 50-digit values.
+#include "numerics/strict.hpp"
+
 #include <boost/math/distributions/normal.hpp>
 #include <catch2/catch.hpp>
 #include <cmath>
@@ -8,7 +10,6 @@
 #include "drawn_numbers.hpp"
 #include "numerics/bits.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/strict.hpp"
 #include "precise_normal.hpp"
 #include "reference_table.hpp"
 
