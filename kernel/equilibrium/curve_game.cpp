@@ -6,6 +6,7 @@
 
 #include "equilibrium/independent_bound.hpp"
 #include "equilibrium/reply.hpp"
+#include "information/two_sum.hpp"
 #include "numerics/normal.hpp"
 #include "numerics/sums.hpp"
 
@@ -20,6 +21,7 @@ namespace folkmote {
 namespace {
 
 constexpr double infinity = std::numeric_limits<double>::infinity();
+constexpr int block = 256;  // pairs at a time
 constexpr double inverse_sqrt_two_pi = 0x1.9884533d43651p-2;
 
 std::vector<double> heard_weights(const Knowledge& knowledge, const Stakes& stakes) {
@@ -32,6 +34,24 @@ std::vector<double> heard_weights(const Knowledge& knowledge, const Stakes& stak
     totals.push_back(ordered_sum(weights));
   }
   return totals;
+}
+
+double sum_of_heard(std::span<const std::uint32_t> entries, std::span<const double> weight,
+                    std::span<const double> chance) {
+  double sum = 0.0;
+  for (std::size_t k = 0; k < entries.size(); ++k) {
+    if (Overlap::heard(entries[k])) sum += weight[k] * chance[k];
+  }
+  return sum;
+}
+
+/// margins / sd; where sd is 0 the index is certain, and decides by the side on which it lies.
+void divide_by_sd(std::span<double> margins, std::span<const double> sd, bool steps_act) {
+  for (std::size_t k = 0; k < margins.size(); ++k) {
+    const double margin = margins[k];
+    const bool acts = steps_act ? margin >= 0.0 : margin > 0.0;
+    margins[k] = sd[k] > 0.0 ? margin / sd[k] : (acts ? infinity : -infinity);
+  }
 }
 
 std::vector<double> negated(std::vector<double> values) {
@@ -52,72 +72,118 @@ std::vector<double> highest_cutoffs(const Stakes& stakes, std::span<const double
 
 }  // namespace
 
-CurveGame::CurveGame(const Knowledge& knowledge, Stakes stakes)
+CurveGame::CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution& execution)
     : prior_mean_(knowledge.prior_mean),
       stakes_(std::move(stakes)),
-      overlap_(knowledge, stakes_.mix == 1.0),
+      overlap_(knowledge, stakes_.mix == 1.0, execution),
       heard_weight_(heard_weights(knowledge, stakes_)),
       lowest_(negated(stakes_.cost)),
       highest_(highest_cutoffs(stakes_, heard_weight_)),
-      curve_(knowledge.prior_mean, ThetaLaws(knowledge), stakes_.weight, lowest_, highest_, {}) {}
+      curve_(knowledge.prior_mean, ThetaLaws(knowledge), stakes_.weight, lowest_, highest_, {}) {
+  for (int j = 0; j < size(); ++j) {
+    partners_.push_back({0.0, curve_.laws().pull[j], curve_.laws().spread[j], stakes_.weight[j]});
+    largest_ = std::max({largest_, std::fabs(lowest_[j]), std::fabs(highest_[j])});
+  }
+  error_.resize(size());
+  constexpr int members = 4096;  // of one task
+  run_tasks((size() + members - 1) / members, execution, [&](std::int64_t task, const StopFlag&) {
+    const int first = static_cast<int>(task) * members;
+    for (int i = first; i < std::min(size(), first + members); ++i) error_[i] = error_bound(i);
+  });
+}
 
 void CurveGame::set(std::span<const double> cutoffs, BestReply::Limit at_jump, const Execution& execution) {
-  cutoffs_.assign(cutoffs.begin(), cutoffs.end());
+  for (std::size_t j = 0; j < cutoffs.size(); ++j) partners_[j].cutoff = cutoffs[j];
   limit_ = at_jump;
   if (stakes_.mix < 1.0) curve_.tabulate(cutoffs, at_jump == BestReply::Limit::left, execution);
 }
 
 CurveGame::Pairs CurveGame::pairs(int member, double t) const {
-  constexpr std::size_t most = 256;
   const Overlap::Row row = overlap_.row(member);
   const double above_mean = t - prior_mean_;
-  double exact[most], apart[most];
-  Pairs sums;
-  for (std::size_t first = 0; first < row.member.size(); first += most) {
-    const std::size_t count = std::min(most, row.member.size() - first);
+  const double foreseen = curve_.laws().trust[member] * above_mean, doubt = curve_.laws().doubt[member];
+  const bool steps_act = limit_ == BestReply::Limit::left;
+  double exact[block], apart[block], sd[block], weight[block];
+  TwoSum correction, heard;
+  for (std::size_t first = 0; first < row.member.size(); first += block) {
+    const std::size_t count = std::min<std::size_t>(block, row.member.size() - first);
+    const auto entries = row.member.subspan(first, count);
     for (std::size_t k = 0; k < count; ++k) {
-      const int j = Overlap::partner(row.member[first + k]);
-      const double margin = (cutoffs_[j] - t) + row.one_less_rho[first + k] * above_mean;
-      const double sd = row.sd[first + k];
-      const bool acts = limit_ == BestReply::Limit::left ? margin >= 0.0 : margin > 0.0;
-      exact[k] = sd > 0.0 ? margin / sd : (acts ? infinity : -infinity);
-      apart[k] = stakes_.mix < 1.0 ? curve_.independent_z(member, j, t) : 0.0;
+      const Partner& j = partners_[Overlap::partner(entries[k])];
+      weight[k] = j.weight;
+      exact[k] = (j.cutoff - t) + row.one_less_rho[first + k] * above_mean;
+      apart[k] = (j.cutoff - prior_mean_) - j.pull * foreseen;
+      sd[k] = j.spread + j.pull * j.pull * doubt;
     }
+    divide_by_sd({exact, count}, row.sd.subspan(first, count), steps_act);
     normal_cdf({exact, count}, {exact, count});
+    if (stakes_.mix > 0.0) heard.add(sum_of_heard(entries, {weight, count}, {exact, count}));
+    if (stakes_.mix == 1.0) continue;
+    for (std::size_t k = 0; k < count; ++k) sd[k] = std::sqrt(sd[k]);
+    divide_by_sd({apart, count}, {sd, count}, steps_act);
     normal_cdf({apart, count}, {apart, count});
-    for (std::size_t k = 0; k < count; ++k) {
-      const std::uint32_t entry = row.member[first + k];
-      const double weight = stakes_.weight[Overlap::partner(entry)];
-      sums.correction += weight * (exact[k] - apart[k]);
-      if (Overlap::heard(entry)) sums.heard += weight * exact[k];
-    }
+    for (std::size_t k = 0; k < count; ++k) exact[k] -= apart[k];
+    correction.add(ordered_dot({weight, count}, {exact, count}));
   }
-  return sums;
+  return {heard.value(), correction.value()};
 }
 
-double CurveGame::gain(int member, double t) const {
+CurveGame::Gain CurveGame::gain(int member, double t) const {
   const Pairs sums = pairs(member, t);
-  double share = 0.0;
+  double share = 0.0, slope = 0.0;
   if (stakes_.mix < 1.0 && size() > 1) {
     const double weight = stakes_.weight[member];
     const double own = weight * normal_cdf(curve_.independent_z(member, member, t));
-    const double others = curve_.expect(member, t).share - own + sums.correction;
-    share += (1.0 - stakes_.mix) * others / (curve_.total() - weight);
+    const TurnoutCurve::Value all = curve_.expect(member, t);
+    const double reached = (1.0 - stakes_.mix) / (curve_.total() - weight);
+    share += reached * (all.share - own + sums.correction);
+    slope += reached * all.slope;
   }
   if (stakes_.mix > 0.0 && heard_weight_[member] > 0.0) share += stakes_.mix * sums.heard / heard_weight_[member];
-  return stakes_.benefit[member] * share - stakes_.cost[member] - t;
+  const double benefit = stakes_.benefit[member];
+  return {benefit * share - stakes_.cost[member] - t, std::min(0.0, benefit * slope) - 1.0};
 }
 
-double CurveGame::reply(int member, double from) const {
-  return reply_from(from, [&](double t) { return gain(member, t); });
+bool CurveGame::mostly_independent() const {
+  const double all = static_cast<double>(size()) * static_cast<double>(size());
+  return stakes_.mix == 0.0 && static_cast<double>(overlap_.pairs()) < 0.02 * all;
 }
 
-double CurveGame::error(int member) const {
-  // Rounding of the pairs' sums beside the curve's own error.
-  const double pairs = 0x1p-50 * static_cast<double>(overlap_.row(member).member.size() + 8);
+CurveGame::Reply CurveGame::reply(int member, double from) const {
+  double first = 0.0;  // the gain at `from`, which reply_from asks for first
+  bool asked = false;
+  const double cutoff = reply_from(from, [&](double t) {
+    const double value = gain(member, t).value;
+    if (!asked) first = value;
+    asked = true;
+    return value;
+  });
+  const double moved = cutoff - from;
+  return {cutoff, moved == 0.0 ? -1.0 : std::min(-1.0, -first / moved)};
+}
+
+/// What rounding can do to the sums over pairs, beside the curve's own error. Phi errs by a few units in its value, and
+/// by phi times the error of z, whose numerator is a difference of numbers of the size of cutoffs. Sums run over
+/// blocks.
+double CurveGame::error_bound(int member) const {
+  constexpr double unit = 0x1p-53, in_value = 8.0, in_sums = block + 8.0;
+  const double size = std::fabs(prior_mean_) + std::max(std::fabs(largest_), std::fabs(prior_mean_));
+  const auto of_term = [&](double sd) { return sd > 0.0 ? std::min(1.0, unit * (in_value + 2.0 * size / sd)) : 0.0; };
+  const Overlap::Row row = overlap_.row(member);
+  const double doubt = curve_.laws().doubt[member];
+  double all = 0.0, heard = 0.0, weight_of_all = 0.0;
+  for (std::size_t k = 0; k < row.member.size(); ++k) {
+    const Partner& j = partners_[Overlap::partner(row.member[k])];
+    const double exact = j.weight * of_term(row.sd[k]);
+    all += exact + j.weight * of_term(std::sqrt(j.spread + j.pull * j.pull * doubt));
+    weight_of_all += j.weight;
+    if (Overlap::heard(row.member[k])) heard += exact;
+  }
+  double error = in_value * unit;
   const double others = curve_.total() - stakes_.weight[member];
-  const double of_curve = stakes_.mix < 1.0 && others > 0.0 ? curve_.error() / others : 0.0;
-  return stakes_.benefit[member] * (of_curve + pairs);
+  if (stakes_.mix < 1.0 && others > 0.0) error += (all + unit * in_sums * weight_of_all + curve_.error()) / others;
+  if (heard_weight_[member] > 0.0) error += stakes_.mix * (heard / heard_weight_[member] + unit * in_sums);
+  return 1.01 * (stakes_.benefit[member] * error + 4.0 * unit * size);
 }
 
 double CurveGame::contraction_bound() const {

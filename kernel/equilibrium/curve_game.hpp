@@ -14,7 +14,7 @@ namespace folkmote {
 
 class CurveGame {
  public:
-  CurveGame(const Knowledge& knowledge, Stakes stakes);
+  CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution& execution);
 
   int size() const { return static_cast<int>(stakes_.benefit.size()); }
   /// Cutoff of a member when nobody, or everybody in its reach, acts.
@@ -24,12 +24,21 @@ class CurveGame {
   /// Sets the cutoffs of everybody else and tabulates the curve.
   void set(std::span<const double> cutoffs, BestReply::Limit at_jump, const Execution& execution);
 
-  /// F_i(t; cutoffs set).
-  double gain(int member, double t) const;
+  struct Gain {
+    double value;  // F_i(t; cutoffs set)
+    double slope;  // dF_i/dt were nobody to share information; at most -1
+  };
+  Gain gain(int member, double t) const;
+  struct Reply {
+    double cutoff;
+    double slope;  // of the chord from `from` to the cutoff: at most -1
+  };
   /// The root of F_i from the side on which `from` lies, as BestReply::reply.
-  double reply(int member, double from) const;
-  /// Bound on the error of gain().
-  double error(int member) const;
+  Reply reply(int member, double from) const;
+  /// Whether pairs that share information are so few that Gain::slope is near the slope.
+  bool mostly_independent() const;
+  /// Bound on the error of gain().value.
+  double error(int member) const { return error_[member]; }
 
   /// max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)), never smaller than that.
   double contraction_bound() const;
@@ -44,6 +53,13 @@ class CurveGame {
   };
   Pairs pairs(int member, double t) const;
 
+  double error_bound(int member) const;
+
+  /// What a pair needs of the other member, side by side: one line of memory is fetched for it, not four.
+  struct Partner {
+    double cutoff, pull, spread, weight;
+  };
+
   double prior_mean_;
   Stakes stakes_;
   Overlap overlap_;
@@ -51,7 +67,9 @@ class CurveGame {
   std::vector<double> lowest_;
   std::vector<double> highest_;
   TurnoutCurve curve_;
-  std::vector<double> cutoffs_;
+  std::vector<Partner> partners_;
+  double largest_ = 0.0;  // size of the largest cutoff
+  std::vector<double> error_;
   BestReply::Limit limit_ = BestReply::Limit::left;
 };
 

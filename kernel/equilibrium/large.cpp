@@ -59,7 +59,25 @@ class LargeSolver {
   std::vector<double> replies(const std::vector<double>& cutoffs, Limit limit) {
     game_.set(cutoffs, limit, execution_);
     std::vector<double> image(cutoffs.size());
-    for_members([&](int i) { image[i] = game_.reply(i, cutoffs[i]); });
+    slopes_.resize(cutoffs.size());
+    for_members([&](int i) {
+      const CurveGame::Reply reply = game_.reply(i, cutoffs[i]);
+      image[i] = reply.cutoff;
+      slopes_[i] = reply.slope;
+    });
+    ++iterations_;
+    return image;
+  }
+
+  /// Best replies to first order, at one evaluation of each gain: with the slopes of the last full replies, or, when
+  /// there were none, with those of the curve.
+  std::vector<double> quick_replies(const std::vector<double>& cutoffs) {
+    game_.set(cutoffs, Limit::left, execution_);
+    std::vector<double> image(cutoffs.size());
+    for_members([&](int i) {
+      const CurveGame::Gain gain = game_.gain(i, cutoffs[i]);
+      image[i] = cutoffs[i] - gain.value / (slopes_.empty() ? gain.slope : slopes_[i]);
+    });
     ++iterations_;
     return image;
   }
@@ -72,7 +90,7 @@ class LargeSolver {
     for (std::size_t i = 0; i < moved.size(); ++i) moved[i] = cutoffs[i] + offset * direction[i];
     game_.set(moved, limit, execution_);
     std::vector<char> agrees(moved.size());
-    for_members([&](int i) { agrees[i] = sign * game_.gain(i, moved[i]) >= game_.error(i); });
+    for_members([&](int i) { agrees[i] = sign * game_.gain(i, moved[i]).value >= game_.error(i); });
     ++iterations_;
     return std::all_of(agrees.begin(), agrees.end(), [](char agree) { return agree != 0; });
   }
@@ -85,8 +103,9 @@ class LargeSolver {
     for (int i = 0; i < n; ++i) cutoffs[i] = 0.5 * (game_.lowest(i) + game_.highest(i));
     Mixing mixing;
     double last = std::numeric_limits<double>::infinity();
+    bool quick = game_.mostly_independent();
     for (int step = 0; step < most && iterations_ < rule_.sweeps; ++step) {
-      const std::vector<double> image = replies(cutoffs, Limit::left);
+      const std::vector<double> image = quick ? quick_replies(cutoffs) : replies(cutoffs, Limit::left);
       double moved = 0.0;
       for (int i = 0; i < n; ++i) moved = std::max(moved, std::fabs(image[i] - cutoffs[i]));
       if (moved <= 0.5 * slack_ && signs_agree(image, ones, slack_, -1.0, Limit::right) &&
@@ -94,7 +113,9 @@ class LargeSolver {
         return enclosure_around(image);
       }
       if (moved == 0.0) return std::nullopt;
-      if (moved > 4.0 * last) mixing.restart();
+      const bool helped = !(moved > 4.0 * last);
+      if (!helped) mixing.restart();
+      quick = !quick || helped;
       last = moved;
       cutoffs = mixing.next(cutoffs, image);
       for (int i = 0; i < n; ++i) cutoffs[i] = std::clamp(cutoffs[i], game_.lowest(i), game_.highest(i));
@@ -195,6 +216,7 @@ class LargeSolver {
   double bound_;
   double tolerance_ = 0.0;
   double slack_ = 0.0;
+  std::vector<double> slopes_;  // of the gains, from the last full replies
   std::int64_t iterations_ = 0;
 };
 

@@ -31,7 +31,7 @@ Enclosure solve_large(const Knowledge& knowledge, const Stakes& stakes, const So
                       const Execution& execution) {
   Enclosure found;
   if (curve_serves(knowledge)) {
-    CurveGame game(knowledge, stakes);
+    CurveGame game(knowledge, stakes, execution);
     return enclose_large(game, rule, execution);
   }
   run_tasks(1, execution,

@@ -15,6 +15,8 @@ namespace folkmote {
 
 namespace {
 
+constexpr int most_blocks = 64;
+
 /// By speaker k: who holds k's signal and with what precision, the speaker itself included.
 struct Holders {
   std::vector<std::int64_t> start;
@@ -45,31 +47,71 @@ Holders holders_of(const Knowledge& knowledge) {
   return holders;
 }
 
+/// Whose signals and broadcasts reach whom, prepared once for all rows.
+class Sources {
+ public:
+  explicit Sources(const Knowledge& knowledge)
+      : knowledge(knowledge), holders(holders_of(knowledge)), broadcasts_of(knowledge.size), held(knowledge.size) {
+    for (std::size_t q = 0; q < knowledge.broadcasts.size(); ++q) {
+      for (int i : knowledge.broadcasts[q].audience) broadcasts_of[i].push_back(static_cast<int>(q));
+    }
+    for (int i = 0; i < knowledge.size; ++i) {
+      each(i, [&](int, double precision) { held[i].add(precision); });
+      for (int q : broadcasts_of[i]) held[i].add(knowledge.broadcasts[q].precision);
+    }
+  }
+
+  /// Sources of i in increasing order of speaker, its own signal in its place: the order of K_i, so that K_i - C_ij is
+  /// exactly 0 where j holds all that i holds.
+  template <class Visit>
+  void each(int i, const Visit& visit) const {
+    bool own_done = false;
+    for (std::int64_t k = knowledge.start[i]; k < knowledge.start[i + 1]; ++k) {
+      if (!own_done && knowledge.speaker[k] > i) {
+        visit(i, knowledge.signal_precision[i]);
+        own_done = true;
+      }
+      visit(knowledge.speaker[k], knowledge.report_precision[k]);
+    }
+    if (!own_done) visit(i, knowledge.signal_precision[i]);
+  }
+
+  const Knowledge& knowledge;
+  Holders holders;
+  std::vector<std::vector<int>> broadcasts_of;
+  std::vector<TwoSum> held;  // K_i
+};
+
 /// One row at a time: sums of shared precisions and the members they belong to.
 class RowBuilder {
  public:
-  explicit RowBuilder(const Knowledge& knowledge)
-      : knowledge_(knowledge),
-        holders_(holders_of(knowledge)),
-        broadcasts_of_(knowledge.size),
-        sums_(knowledge.size),
-        seen_(knowledge.size, 0),
-        held_(knowledge.size) {
-    for (std::size_t q = 0; q < knowledge.broadcasts.size(); ++q) {
-      for (int i : knowledge.broadcasts[q].audience) broadcasts_of_[i].push_back(static_cast<int>(q));
-    }
-    for (int i = 0; i < knowledge.size; ++i) sum_held(i);
+  RowBuilder(const Sources& sources, bool only_heard)
+      : sources_(sources),
+        knowledge_(sources.knowledge),
+        only_heard_(only_heard),
+        sums_(sources.knowledge.size),
+        seen_(sources.knowledge.size, 0) {}
+
+  /// At least the number of members that gather(i) meets.
+  std::size_t most(int i) const {
+    std::size_t count = knowledge_.start[i + 1] - knowledge_.start[i];
+    if (only_heard_) return count;
+    const std::vector<std::int64_t>& start = sources_.holders.start;
+    sources_.each(i, [&](int speaker, double) { count += start[speaker + 1] - start[speaker]; });
+    for (int q : sources_.broadcasts_of[i]) count += knowledge_.broadcasts[q].audience.size();
+    return std::min(count, static_cast<std::size_t>(knowledge_.size));
   }
 
-  /// Members met by i, i itself left out, in order of first meeting.
-  const std::vector<int>& gather(int i, bool only_heard) {
+  /// Members met by i, i itself left out, in order of first meeting: those heard come first.
+  const std::vector<int>& gather(int i) {
     for (int j : met_) seen_[j] = 0;
     met_.clear();
     seen_[i] = 2;  // not to be listed
-    only_listed_ = only_heard;
+    only_listed_ = false;
     for (std::int64_t k = knowledge_.start[i]; k < knowledge_.start[i + 1]; ++k) list(knowledge_.speaker[k]);
-    each_source(i, [&](int speaker, double precision) { meet_holders(speaker, precision); });
-    for (int q : broadcasts_of_[i]) {
+    only_listed_ = only_heard_;
+    sources_.each(i, [&](int speaker, double precision) { meet_holders(speaker, precision); });
+    for (int q : sources_.broadcasts_of[i]) {
       for (int j : knowledge_.broadcasts[q].audience) add(j, knowledge_.broadcasts[q].precision);
     }
     seen_[i] = 0;
@@ -77,29 +119,9 @@ class RowBuilder {
   }
 
   double shared(int j) const { return sums_[j].value(); }
-  double unshared(int i, int j) const { return std::max(0.0, difference(held_[i], sums_[j])); }
+  double unshared(int i, int j) const { return std::max(0.0, difference(sources_.held[i], sums_[j])); }
 
  private:
-  /// Sources of i in increasing order of speaker, its own signal in its place: the order of K_i, so that K_i - C_ij is
-  /// exactly 0 where j holds all that i holds.
-  template <class Visit>
-  void each_source(int i, const Visit& visit) const {
-    bool own_done = false;
-    for (std::int64_t k = knowledge_.start[i]; k < knowledge_.start[i + 1]; ++k) {
-      if (!own_done && knowledge_.speaker[k] > i) {
-        visit(i, knowledge_.signal_precision[i]);
-        own_done = true;
-      }
-      visit(knowledge_.speaker[k], knowledge_.report_precision[k]);
-    }
-    if (!own_done) visit(i, knowledge_.signal_precision[i]);
-  }
-
-  void sum_held(int i) {
-    each_source(i, [&](int, double precision) { held_[i].add(precision); });
-    for (int q : broadcasts_of_[i]) held_[i].add(knowledge_.broadcasts[q].precision);
-  }
-
   void list(int j) {
     if (seen_[j] != 0) return;
     seen_[j] = 1;
@@ -119,19 +141,19 @@ class RowBuilder {
   void meet_holders(int speaker, double precision) {
     const double signal = knowledge_.signal_precision[speaker];
     if (!(signal > 0.0)) return;
+    const Holders& holders = sources_.holders;
     const bool exact = precision == signal;
-    for (std::int64_t h = holders_.start[speaker]; h < holders_.start[speaker + 1]; ++h) {
-      const double theirs = holders_.precision[h];
-      add(holders_.member[h], exact ? theirs : precision * (theirs / signal));
+    for (std::int64_t h = holders.start[speaker]; h < holders.start[speaker + 1]; ++h) {
+      const double theirs = holders.precision[h];
+      add(holders.member[h], exact ? theirs : precision * (theirs / signal));
     }
   }
 
+  const Sources& sources_;
   const Knowledge& knowledge_;
-  Holders holders_;
-  std::vector<std::vector<int>> broadcasts_of_;
+  const bool only_heard_;
   std::vector<TwoSum> sums_;
   std::vector<char> seen_;
-  std::vector<TwoSum> held_;
   std::vector<int> met_;
   bool only_listed_ = false;
 };
@@ -164,34 +186,51 @@ double Overlap::pairs_at_most(const Knowledge& knowledge) {
   return pairs;
 }
 
-Overlap::Overlap(const Knowledge& knowledge, bool only_heard) {
-  RowBuilder builder(knowledge);
-  // Address space only: pages are taken as rows are written.
-  const auto most = only_heard ? knowledge.speaker.size() : static_cast<std::size_t>(pairs_at_most(knowledge));
-  member_.reserve(most);
-  one_less_rho_.reserve(most);
-  sd_.reserve(most);
-  start_.reserve(knowledge.size + 1);
-  start_.push_back(0);
-  for (int i = 0; i < knowledge.size; ++i) {
-    const std::size_t heard = static_cast<std::size_t>(knowledge.start[i + 1] - knowledge.start[i]);
-    const std::vector<int>& met = builder.gather(i, only_heard);
-    for (std::size_t k = 0; k < met.size(); ++k) {
-      const int j = met[k];
-      const double shared = builder.shared(j);
-      if (k >= heard && !(shared > 0.0)) continue;
-      const ConditionalLaw law = pair_law(knowledge, i, j, shared, builder.unshared(i, j), builder.unshared(j, j));
-      member_.push_back(static_cast<std::uint32_t>(j) | (k < heard ? 0x80000000U : 0U));
-      one_less_rho_.push_back(law.one_less_rho);
-      sd_.push_back(law.sd);
+Overlap::Overlap(const Knowledge& knowledge, bool only_heard, const Execution& execution)
+    : block_size_(std::max(1024, (knowledge.size + most_blocks - 1) / most_blocks)),
+      blocks_((knowledge.size + block_size_ - 1) / block_size_) {
+  const Sources sources(knowledge);
+  run_tasks(static_cast<std::int64_t>(blocks_.size()), execution, [&](std::int64_t b, const StopFlag& stop) {
+    RowBuilder builder(sources, only_heard);
+    Block& block = blocks_[b];
+    const int first = static_cast<int>(b) * block_size_, last = std::min(knowledge.size, first + block_size_);
+    // Address space only: pages are taken as rows are written.
+    std::size_t most = 0;
+    for (int i = first; i < last; ++i) most += builder.most(i);
+    block.member.reserve(most);
+    block.one_less_rho.reserve(most);
+    block.sd.reserve(most);
+    block.start.push_back(0);
+    for (int i = first; i < last && !stop.raised(); ++i) {
+      const std::size_t heard = static_cast<std::size_t>(knowledge.start[i + 1] - knowledge.start[i]);
+      const std::vector<int>& met = builder.gather(i);
+      for (std::size_t k = 0; k < met.size(); ++k) {
+        const int j = met[k];
+        const double shared = builder.shared(j);
+        if (k >= heard && !(shared > 0.0)) continue;
+        const ConditionalLaw law = pair_law(knowledge, i, j, shared, builder.unshared(i, j), builder.unshared(j, j));
+        block.member.push_back(static_cast<std::uint32_t>(j) | (k < heard ? 0x80000000U : 0U));
+        block.one_less_rho.push_back(law.one_less_rho);
+        block.sd.push_back(law.sd);
+      }
+      block.start.push_back(static_cast<std::int64_t>(block.member.size()));
     }
-    start_.push_back(static_cast<std::int64_t>(member_.size()));
-  }
+  });
+}
+
+std::int64_t Overlap::pairs() const {
+  std::int64_t all = 0;
+  for (const Block& block : blocks_) all += static_cast<std::int64_t>(block.member.size());
+  return all;
 }
 
 Overlap::Row Overlap::row(int i) const {
-  const std::size_t first = start_[i], count = start_[i + 1] - start_[i];
-  return {{member_.data() + first, count}, {one_less_rho_.data() + first, count}, {sd_.data() + first, count}};
+  const Block& block = blocks_[i / block_size_];
+  const int row = i % block_size_;
+  const std::size_t first = block.start[row], count = block.start[row + 1] - block.start[row];
+  return {{block.member.data() + first, count},
+          {block.one_less_rho.data() + first, count},
+          {block.sd.data() + first, count}};
 }
 
 }  // namespace folkmote

@@ -7,6 +7,7 @@
 #include <vector>
 
 #include "information/shared.hpp"
+#include "parallel/workers.hpp"
 
 namespace folkmote {
 
@@ -31,7 +32,8 @@ class Overlap {
   static double pairs_at_most(const Knowledge& knowledge);
 
   /// `only_heard`: rows of the members heard and nobody else, for payoffs that see contacts only.
-  Overlap(const Knowledge& knowledge, bool only_heard);
+  /// `execution` splits the rows; it changes no number.
+  Overlap(const Knowledge& knowledge, bool only_heard, const Execution& execution);
 
   struct Row {
     std::span<const std::uint32_t> member;  // in no order that matters; see partner() and heard()
@@ -43,13 +45,19 @@ class Overlap {
   static int partner(std::uint32_t entry) { return static_cast<int>(entry & 0x7fffffffU); }
   static bool heard(std::uint32_t entry) { return (entry >> 31) != 0; }
 
-  std::int64_t pairs() const { return static_cast<std::int64_t>(member_.size()); }
+  std::int64_t pairs() const;
 
  private:
-  std::vector<std::int64_t> start_;
-  std::vector<std::uint32_t> member_;  // 20 bytes a pair in all
-  std::vector<double> one_less_rho_;
-  std::vector<double> sd_;
+  /// The rows of members first .. first + rows - 1; 20 bytes a pair.
+  struct Block {
+    std::vector<std::int64_t> start;
+    std::vector<std::uint32_t> member;
+    std::vector<double> one_less_rho;
+    std::vector<double> sd;
+  };
+
+  int block_size_;
+  std::vector<Block> blocks_;
 };
 
 }  // namespace folkmote

@@ -21,7 +21,7 @@ struct Compared {
       : knowledge(make_knowledge(*c.study, c.beliefs, 0)),
         shared(knowledge),
         dense(knowledge, shared, make_stakes(*c.study, c.payoff, 0)),
-        curve(knowledge, make_stakes(*c.study, c.payoff, 0)),
+        curve(knowledge, make_stakes(*c.study, c.payoff, 0), {}),
         dense_found(enclose(dense, rule, StopFlag{})),
         curve_found(enclose_large(curve, rule, {2, {}})) {}
 
@@ -41,7 +41,7 @@ void check_gains(Compared& c, std::uint64_t seed) {
     double worst = 0.0;
     for (int i = 0; i < c.dense.size(); ++i) {
       const double t = c.dense.lowest(i) + numbers.unit() * (c.dense.highest(i) - c.dense.lowest(i));
-      const double gap = std::fabs(c.curve.gain(i, t) - c.dense.gain(i, t, cutoffs, limit));
+      const double gap = std::fabs(c.curve.gain(i, t).value - c.dense.gain(i, t, cutoffs, limit));
       worst = std::max(worst, gap);
       CHECK(gap <= c.curve.error(i) + 1e-13);
     }
