@@ -72,18 +72,20 @@ std::vector<double> highest_cutoffs(const Stakes& stakes, std::span<const double
 
 }  // namespace
 
-CurveGame::CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution& execution)
+CurveGame::CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution& execution, std::size_t least_audience)
     : prior_mean_(knowledge.prior_mean),
       stakes_(std::move(stakes)),
-      overlap_(knowledge, stakes_.mix == 1.0, execution),
+      common_(common_report(knowledge, least_audience)),
+      overlap_(knowledge, common_, stakes_.mix == 1.0, execution),
       heard_weight_(heard_weights(knowledge, stakes_)),
       lowest_(negated(stakes_.cost)),
       highest_(highest_cutoffs(stakes_, heard_weight_)),
-      curve_(knowledge.prior_mean, ThetaLaws(knowledge), stakes_.weight, lowest_, highest_, {}) {
+      curve_(knowledge.prior_mean, ThetaLaws(knowledge, common_), stakes_.weight, lowest_, highest_, {}) {
   for (int j = 0; j < size(); ++j) {
     partners_.push_back({0.0, curve_.laws().pull[j], curve_.laws().spread[j], stakes_.weight[j]});
     largest_ = std::max({largest_, std::fabs(lowest_[j]), std::fabs(highest_[j])});
   }
+  if (!serves()) return;
   error_.resize(size());
   constexpr int members = 4096;  // of one task
   run_tasks((size() + members - 1) / members, execution, [&](std::int64_t task, const StopFlag&) {
@@ -101,7 +103,6 @@ void CurveGame::set(std::span<const double> cutoffs, BestReply::Limit at_jump, c
 CurveGame::Pairs CurveGame::pairs(int member, double t) const {
   const Overlap::Row row = overlap_.row(member);
   const double above_mean = t - prior_mean_;
-  const double foreseen = curve_.laws().trust[member] * above_mean, doubt = curve_.laws().doubt[member];
   const bool steps_act = limit_ == BestReply::Limit::left;
   double exact[block], apart[block], sd[block], weight[block];
   TwoSum correction, heard;
@@ -112,20 +113,37 @@ CurveGame::Pairs CurveGame::pairs(int member, double t) const {
       const Partner& j = partners_[Overlap::partner(entries[k])];
       weight[k] = j.weight;
       exact[k] = (j.cutoff - t) + row.one_less_rho[first + k] * above_mean;
-      apart[k] = (j.cutoff - prior_mean_) - j.pull * foreseen;
-      sd[k] = j.spread + j.pull * j.pull * doubt;
     }
     divide_by_sd({exact, count}, row.sd.subspan(first, count), steps_act);
     normal_cdf({exact, count}, {exact, count});
     if (stakes_.mix > 0.0) heard.add(sum_of_heard(entries, {weight, count}, {exact, count}));
     if (stakes_.mix == 1.0) continue;
-    for (std::size_t k = 0; k < count; ++k) sd[k] = std::sqrt(sd[k]);
+    lay_apart(member, t, entries, {apart, count}, {sd, count});
     divide_by_sd({apart, count}, {sd, count}, steps_act);
     normal_cdf({apart, count}, {apart, count});
     for (std::size_t k = 0; k < count; ++k) exact[k] -= apart[k];
     correction.add(ordered_dot({weight, count}, {exact, count}));
   }
   return {heard.value(), correction.value()};
+}
+
+/// What the curve has counted for the members of these entries: margins, and standard deviations.
+void CurveGame::lay_apart(int member, double t, std::span<const std::uint32_t> entries, std::span<double> margin,
+                          std::span<double> sd) const {
+  const ThetaLaws& laws = curve_.laws();
+  const double above_mean = t - prior_mean_;
+  const double foreseen = laws.trust[member] * above_mean, doubt = laws.doubt[member];
+  for (std::size_t k = 0; k < entries.size(); ++k) {
+    const int other = Overlap::partner(entries[k]);
+    const Partner& j = partners_[other];
+    if (laws.common) {
+      margin[k] = (j.cutoff - prior_mean_) - laws.slope(member, other) * above_mean;
+      sd[k] = std::sqrt(laws.variance(member, other));
+    } else {
+      margin[k] = (j.cutoff - prior_mean_) - j.pull * foreseen;
+      sd[k] = std::sqrt(j.spread + j.pull * j.pull * doubt);
+    }
+  }
 }
 
 CurveGame::Gain CurveGame::gain(int member, double t) const {
@@ -170,12 +188,11 @@ double CurveGame::error_bound(int member) const {
   const double size = std::fabs(prior_mean_) + std::max(std::fabs(largest_), std::fabs(prior_mean_));
   const auto of_term = [&](double sd) { return sd > 0.0 ? std::min(1.0, unit * (in_value + 2.0 * size / sd)) : 0.0; };
   const Overlap::Row row = overlap_.row(member);
-  const double doubt = curve_.laws().doubt[member];
   double all = 0.0, heard = 0.0, weight_of_all = 0.0;
   for (std::size_t k = 0; k < row.member.size(); ++k) {
     const Partner& j = partners_[Overlap::partner(row.member[k])];
     const double exact = j.weight * of_term(row.sd[k]);
-    all += exact + j.weight * of_term(std::sqrt(j.spread + j.pull * j.pull * doubt));
+    all += exact + j.weight * of_term(std::sqrt(curve_.laws().variance(member, Overlap::partner(row.member[k]))));
     weight_of_all += j.weight;
     if (Overlap::heard(row.member[k])) heard += exact;
   }

@@ -3,6 +3,8 @@
 // section 4). The same F_i(t; kappa) as BestReply at a cost of nodes and overlapping pairs, never of n^2.
 #include "numerics/strict.hpp"
 
+#include <cmath>
+#include <optional>
 #include <span>
 #include <vector>
 
@@ -14,7 +16,14 @@ namespace folkmote {
 
 class CurveGame {
  public:
-  CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution& execution);
+  CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution& execution,
+            std::size_t least_audience = usual_audience);
+
+  /// An audience of this size or more is counted by the curve, not by pairs: there the two cost the same.
+  static constexpr std::size_t usual_audience = 1000;
+
+  /// False where a common report would need more layers than can be held: ask for an audience that nobody has.
+  bool serves() const { return std::isfinite(curve_.layers()); }
 
   int size() const { return static_cast<int>(stakes_.benefit.size()); }
   /// Cutoff of a member when nobody, or everybody in its reach, acts.
@@ -59,9 +68,12 @@ class CurveGame {
   struct Partner {
     double cutoff, pull, spread, weight;
   };
+  void lay_apart(int member, double t, std::span<const std::uint32_t> entries, std::span<double> margin,
+                 std::span<double> sd) const;
 
   double prior_mean_;
   Stakes stakes_;
+  std::optional<CommonReport> common_;
   Overlap overlap_;
   std::vector<double> heard_weight_;  // sum of omega over the members heard
   std::vector<double> lowest_;

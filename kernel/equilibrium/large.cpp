@@ -224,7 +224,14 @@ class LargeSolver {
 
 bool is_large(int size) { return size > smallest; }
 
-bool curve_serves(const Knowledge& knowledge) { return Overlap::pairs_at_most(knowledge) <= most_pairs; }
+std::optional<CurveGame> curve_game(const Knowledge& knowledge, const Stakes& stakes, const Execution& execution) {
+  for (const std::size_t least : {CurveGame::usual_audience, std::numeric_limits<std::size_t>::max()}) {
+    if (Overlap::pairs_at_most(knowledge, common_report(knowledge, least)) > most_pairs) continue;
+    std::optional<CurveGame> game(std::in_place, knowledge, stakes, execution, least);
+    if (game->serves()) return game;
+  }
+  return std::nullopt;
+}
 
 Enclosure enclose_large(CurveGame& game, const SolveRule& rule, const Execution& execution) {
   return LargeSolver(game, rule, execution).solve();

@@ -2,6 +2,8 @@
 // Enclosing the equilibria of a large community with the turnout curve (MODEL.md, section 4).
 #include "numerics/strict.hpp"
 
+#include <optional>
+
 #include "equilibrium/curve_game.hpp"
 #include "equilibrium/enclosure.hpp"
 
@@ -10,8 +12,9 @@ namespace folkmote {
 /// Large enough that the curve is worth its set-up.
 bool is_large(int size);
 
-/// Whether pairs that share information are few enough to be held one by one (20 bytes each).
-bool curve_serves(const Knowledge& knowledge);
+/// The game of a large community by the turnout curve; nothing where that does not serve, because pairs that share
+/// information are too many to be held one by one (20 bytes each).
+std::optional<CurveGame> curve_game(const Knowledge& knowledge, const Stakes& stakes, const Execution& execution);
 
 /// As `enclose`. Where the contraction bound proves one equilibrium it is found by accelerated best replies and then
 /// enclosed; elsewhere monotone best replies enclose both ends. `execution` splits each sweep.

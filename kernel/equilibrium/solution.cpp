@@ -30,10 +30,7 @@ Enclosure solve_dense(const Knowledge& knowledge, const Stakes& stakes, const So
 Enclosure solve_large(const Knowledge& knowledge, const Stakes& stakes, const SolveRule& rule,
                       const Execution& execution) {
   Enclosure found;
-  if (curve_serves(knowledge)) {
-    CurveGame game(knowledge, stakes, execution);
-    return enclose_large(game, rule, execution);
-  }
+  if (auto game = curve_game(knowledge, stakes, execution)) return enclose_large(*game, rule, execution);
   run_tasks(1, execution,
             [&](std::int64_t, const StopFlag& stop) { found = solve_dense(knowledge, stakes, rule, stop); });
   return found;

@@ -26,6 +26,10 @@
 //   E = (2 pi/h)^2 H/2,   H = w^2 s^2/(w^2 + s^2).
 // h is set for E = 36: 6.3e-16 of the total weight. H is largest where w^2 and s^2 are alike, which decides u.
 //
+// A common report adds the integral over M, again by the trapezoidal rule: given e_i, what is left of j's chance is
+// Phi of a straight line in M of width sqrt(spread_j + pull_j^2 doubt_i) / |sway_j - pull_j grip_i sway_i|, so that the
+// same bound holds with the narrowest of these as w and the smallest haze_i as s^2.
+//
 // Members with so little doubt that h would have to be very small (hubs that know theta almost exactly) are summed over
 // everybody in closed form instead; which, is decided by counting operations.
 
@@ -46,8 +50,38 @@ constexpr int blocks = 64;
 TurnoutCurve::TurnoutCurve(double prior_mean, ThetaLaws laws, std::vector<double> weight,
                            std::span<const double> lowest, std::span<const double> highest, const Layout& layout)
     : prior_mean_(prior_mean), laws_(std::move(laws)), weight_(std::move(weight)), total_(ordered_sum(weight_)) {
+  if (laws_.common) lay_layers(lowest, highest);
+  if (std::isinf(layers_)) return;
   lay_out(lowest, highest, layout);
   bound_error(lowest, highest);
+}
+
+/// Places the values of M.
+void TurnoutCurve::lay_layers(std::span<const double> lowest, std::span<const double> highest) {
+  constexpr double most_layers = 256.0;
+  const std::size_t n = weight_.size();
+  double least_doubt = infinity, least_haze = infinity, low = infinity, high = -infinity;
+  double least_turn = infinity, most_turn = 0.0;  // grip_i sway_i
+  for (std::size_t i = 0; i < n; ++i) {
+    const double around = reach * std::sqrt(laws_.haze[i]);
+    least_doubt = std::min(least_doubt, laws_.doubt[i]);
+    least_haze = std::min(least_haze, laws_.haze[i]);
+    least_turn = std::min(least_turn, laws_.grip[i] * laws_.sway[i]);
+    most_turn = std::max(most_turn, laws_.grip[i] * laws_.sway[i]);
+    low = std::min(low, laws_.hint[i] * (lowest[i] - prior_mean_) - around);
+    high = std::max(high, laws_.hint[i] * (highest[i] - prior_mean_) + around);
+  }
+  double w2 = infinity;
+  for (std::size_t j = 0; j < n; ++j) {
+    const double across = std::max(std::fabs(laws_.sway[j] - laws_.pull[j] * least_turn),
+                                   std::fabs(laws_.sway[j] - laws_.pull[j] * most_turn));
+    if (!(across > 0.0)) continue;
+    w2 = std::min(w2, (laws_.spread[j] + laws_.pull[j] * laws_.pull[j] * least_doubt) / across / across);
+  }
+  layer_step_ = step_per_root * std::sqrt(std::isinf(w2) ? least_haze : w2 / (w2 + least_haze) * least_haze);
+  first_shift_ = low - layer_step_;
+  layers_ = std::floor((high - low) / layer_step_) + 3.0;
+  if (!(layers_ <= most_layers)) layers_ = infinity;
 }
 
 /// The grid that serves every member with at least that much doubt.
@@ -62,8 +96,9 @@ TurnoutCurve::Grid TurnoutCurve::grid_for(double least_doubt, std::span<const do
   for (std::size_t i = 0; i < weight_.size(); ++i) {
     if (laws_.doubt[i] < least_doubt) continue;
     const double around = reach * std::sqrt(laws_.doubt[i] - grid.smoothing);
-    low = std::min(low, prior_mean_ + laws_.trust[i] * (lowest[i] - prior_mean_) - around);
-    high = std::max(high, prior_mean_ + laws_.trust[i] * (highest[i] - prior_mean_) + around);
+    const double turned = laws_.grip[i] * laws_.sway[i] * reach * std::sqrt(laws_.haze[i]);
+    low = std::min(low, prior_mean_ + laws_.trust[i] * (lowest[i] - prior_mean_) - turned - around);
+    high = std::max(high, prior_mean_ + laws_.trust[i] * (highest[i] - prior_mean_) + turned + around);
   }
   grid.first = low - 2.0 * grid.step;
   grid.nodes = std::floor((high - low) / grid.step) + 5.0;
@@ -85,16 +120,16 @@ void TurnoutCurve::lay_out(std::span<const double> lowest, std::span<const doubl
     const double doubt = doubts[left_out];
     if (!(doubt > 0.0)) continue;
     const Grid grid = grid_for(doubt, lowest, highest);
-    if (!(grid.nodes <= most_nodes)) continue;
+    if (!(grid.nodes * layers_ <= most_nodes)) continue;
     const double direct = static_cast<double>(std::lower_bound(doubts.begin(), doubts.end(), doubt) - doubts.begin());
-    const double cost = static_cast<double>(n) * (2.0 * grid.nodes + layout.direct_cost * direct);
+    const double cost = static_cast<double>(n) * (2.0 * grid.nodes * layers_ + layout.direct_cost * direct);
     if (cost >= cheapest) continue;
     cheapest = cost;
     grid_ = grid;
     least_doubt_ = doubt;
   }
   nodes_ = static_cast<std::size_t>(grid_.nodes);
-  table_.resize(nodes_);
+  table_.resize(nodes_ * static_cast<std::size_t>(layers_));
   for (double doubt : laws_.doubt) direct_members_ += doubt < least_doubt_;
 }
 
@@ -110,7 +145,8 @@ void TurnoutCurve::bound_error(std::span<const double> lowest, std::span<const d
   const double width = std::sqrt((std::isinf(least_width2_) ? 0.0 : least_width2_) + std::min(grid_.smoothing, narrow));
   const double in_z = nodes_ > 0 || !std::isinf(least_width2_) ? 6.0 * (size + furthest) / width : 0.0;
   const double in_sums = 16.0 + chunk + static_cast<double>(nodes_) / 8.0 + static_cast<double>(block_size()) / chunk;
-  error_ = total_ * (aliasing + 2.0 * 5.3e-17 + unit * (in_sums + 0.4 * std::min(in_z, 1e12)));
+  const double rules = laws_.common ? 2.0 : 1.0;  // one over theta, one over M
+  error_ = total_ * (rules * (aliasing + 2.0 * 5.3e-17) + unit * (in_sums + layers_ + 0.4 * std::min(in_z, 1e12)));
 }
 
 int TurnoutCurve::block_size() const {
@@ -123,25 +159,31 @@ void TurnoutCurve::tabulate(std::span<const double> cutoffs, bool steps_act, con
   steps_act_ = steps_act;
   if (nodes_ == 0) return;
   const int count = (static_cast<int>(weight_.size()) + block_size() - 1) / block_size();
-  std::vector<double> tables(static_cast<std::size_t>(count) * nodes_, 0.0);
-  run_tasks(count, execution, [&](std::int64_t block, const StopFlag&) {
-    tabulate_block(static_cast<int>(block), {tables.data() + static_cast<std::size_t>(block) * nodes_, nodes_});
+  const std::size_t entries = table_.size();
+  std::vector<double> tables(static_cast<std::size_t>(count) * entries, 0.0);
+  run_tasks(count, execution, [&](std::int64_t block, const StopFlag& stop) {
+    const std::span<double> own(tables.data() + static_cast<std::size_t>(block) * entries, entries);
+    for (std::size_t layer = 0; layer * nodes_ < entries && !stop.raised(); ++layer) {
+      tabulate_layer(static_cast<int>(block), layer, own.subspan(layer * nodes_, nodes_));
+    }
   });
-  for (std::size_t k = 0; k < nodes_; ++k) {
+  for (std::size_t k = 0; k < entries; ++k) {
     TwoSum sum;
-    for (int block = 0; block < count; ++block) sum.add(tables[static_cast<std::size_t>(block) * nodes_ + k]);
+    for (int block = 0; block < count; ++block) sum.add(tables[static_cast<std::size_t>(block) * entries + k]);
     table_[k] = sum.value();
   }
 }
 
-void TurnoutCurve::tabulate_block(int block, std::span<double> table) const {
+void TurnoutCurve::tabulate_layer(int block, std::size_t layer, std::span<double> table) const {
   const int first = block * block_size();
   const int last = std::min(static_cast<int>(weight_.size()), first + block_size());
   std::vector<double> chances(nodes_), above(nodes_ + 1), z(nodes_);
   for (int start = first; start < last; start += chunk) {
     std::fill(chances.begin(), chances.end(), 0.0);
     std::fill(above.begin(), above.end(), 0.0);
-    for (int j = start; j < std::min(last, start + chunk); ++j) add_member(j, chances, above, z);
+    for (int j = start; j < std::min(last, start + chunk); ++j) {
+      add_member(j, laws_.sway[j] * shift(layer), chances, above, z);
+    }
     TwoSum acting;  // those whose chance is 1 at this node and below
     for (std::size_t k = nodes_; k-- > 0;) {
       if (above[k + 1] != 0.0) acting.add(above[k + 1]);
@@ -152,8 +194,9 @@ void TurnoutCurve::tabulate_block(int block, std::span<double> table) const {
 
 /// Adds one member's chance of acting at every node: 1 below the nodes where it is in doubt, 0 above them. `above[k]`
 /// takes the weight of those for whom k is the first node in doubt.
-void TurnoutCurve::add_member(int j, std::span<double> chances, std::span<double> above, std::span<double> z) const {
-  const double margin = cutoffs_[j] - prior_mean_;
+void TurnoutCurve::add_member(int j, double shift, std::span<double> chances, std::span<double> above,
+                              std::span<double> z) const {
+  const double margin = (cutoffs_[j] - prior_mean_) - shift;
   const double pull = laws_.pull[j];
   const double width = std::sqrt(laws_.spread[j] + grid_.smoothing * pull * pull);
   const double nodes = static_cast<double>(nodes_);
@@ -177,19 +220,38 @@ void TurnoutCurve::add_member(int j, std::span<double> chances, std::span<double
 }
 
 double TurnoutCurve::independent_z(int i, int j, double t) const {
-  const double pull = laws_.pull[j];
-  const double margin = (cutoffs_[j] - prior_mean_) - pull * laws_.trust[i] * (t - prior_mean_);
-  const double variance = laws_.spread[j] + pull * pull * laws_.doubt[i];
+  const double margin = (cutoffs_[j] - prior_mean_) - laws_.slope(i, j) * (t - prior_mean_);
+  const double variance = laws_.variance(i, j);
   if (variance > 0.0) return margin / std::sqrt(variance);
   return (steps_act_ ? margin >= 0.0 : margin > 0.0) ? infinity : -infinity;
 }
 
 TurnoutCurve::Value TurnoutCurve::expect(int i, double t) const {
   if (laws_.doubt[i] < least_doubt_) return directly(i, t);
-  return on_grid(i, prior_mean_ + laws_.trust[i] * (t - prior_mean_));
+  if (laws_.common) return over_layers(i, t);
+  return on_grid(i, 0, prior_mean_ + laws_.trust[i] * (t - prior_mean_));
 }
 
-TurnoutCurve::Value TurnoutCurve::on_grid(int i, double centre) const {
+/// The integral over M of what on_grid gives at each layer. The slope leaves out that t moves M too.
+TurnoutCurve::Value TurnoutCurve::over_layers(int i, double t) const {
+  const double s = std::sqrt(laws_.haze[i]);
+  const double centre = laws_.hint[i] * (t - prior_mean_);
+  const double low = std::max(0.0, std::floor((centre - reach * s - first_shift_) / layer_step_));
+  const double high = std::min(layers_ - 1.0, std::floor((centre + reach * s - first_shift_) / layer_step_) + 1.0);
+  TwoSum share, slope;
+  for (std::size_t l = static_cast<std::size_t>(low); l <= static_cast<std::size_t>(high); ++l) {
+    const double z = (shift(l) - centre) / s;
+    const double weight = layer_step_ / s * normal_density(z);
+    const double turned = (t - prior_mean_) - laws_.sway[i] * shift(l);
+    const Value value = on_grid(i, l, prior_mean_ + laws_.grip[i] * turned);
+    share.add(weight * value.share);
+    slope.add(weight * value.slope);
+  }
+  return {share.value(), slope.value()};
+}
+
+TurnoutCurve::Value TurnoutCurve::on_grid(int i, std::size_t layer, double centre) const {
+  const double* table = table_.data() + layer * nodes_;
   constexpr std::size_t most = 256;
   const double s = std::sqrt(laws_.doubt[i] - grid_.smoothing);
   const double low = std::max(0.0, std::floor((centre - reach * s - grid_.first) / grid_.step));
@@ -204,12 +266,12 @@ TurnoutCurve::Value TurnoutCurve::on_grid(int i, double centre) const {
       weights[l] = -0.5 * moments[l] * moments[l];
     }
     exponentials({weights, count}, {weights, count});
-    share.add(ordered_dot({weights, count}, {table_.data() + k, count}));
+    share.add(ordered_dot({weights, count}, {table + k, count}));
     for (std::size_t l = 0; l < count; ++l) moments[l] *= weights[l];
-    slope.add(ordered_dot({moments, count}, {table_.data() + k, count}));
+    slope.add(ordered_dot({moments, count}, {table + k, count}));
   }
   const double scale = grid_.step / s * inverse_sqrt_two_pi;
-  return {scale * share.value(), scale * slope.value() * laws_.trust[i] / s};
+  return {scale * share.value(), scale * slope.value() * laws_.grip[i] / s};
 }
 
 TurnoutCurve::Value TurnoutCurve::directly(int i, double t) const {

@@ -12,9 +12,10 @@
 namespace folkmote {
 
 /// sum_j omega_j P(e_j <= kappa_j | e_i = t) over all j, i itself included, every pair taken as independent given
-/// theta:
-///   X_i(t) = integral of A(theta) dN(theta; mu + trust_i (t - mu), doubt_i),
-///   A(theta) = sum_j omega_j Phi( (kappa_j - mu - pull_j (theta - mu)) / sqrt(spread_j) ).
+/// theta and the common report (see ThetaLaws):
+///   X_i(t) = integral of A(theta, M) dN(theta | M, e_i = t) dN(M | e_i = t),
+///   A(theta, M) = sum_j omega_j Phi( (kappa_j - mu - pull_j (theta - mu) - sway_j (M - mu)) / sqrt(spread_j) ).
+/// Without a common report M = mu, and the curve has one layer.
 class TurnoutCurve {
  public:
   /// Cost of a direct term relative to a node: larger puts more members on the grid.
@@ -36,7 +37,7 @@ class TurnoutCurve {
   };
   Value expect(int i, double t) const;
 
-  /// P(e_j <= kappa_j | e_i = t) as if the two shared no information: the argument of Phi.
+  /// P(e_j <= kappa_j | e_i = t) as if the two shared no information but the common report: the argument of Phi.
   double independent_z(int i, int j, double t) const;
 
   const ThetaLaws& laws() const { return laws_; }
@@ -44,6 +45,8 @@ class TurnoutCurve {
   /// Bound on the error of expect().share: aliasing, truncation and rounding.
   double error() const { return error_; }
   std::size_t nodes() const { return nodes_; }
+  /// Values of M at which the curve is tabulated. Infinite where they would be too many: the curve is then of no use.
+  double layers() const { return layers_; }
   /// Members whose expectation is summed over everybody instead.
   int direct_members() const { return direct_members_; }
 
@@ -55,14 +58,19 @@ class TurnoutCurve {
     double nodes = 0.0;
   };
 
+  void lay_layers(std::span<const double> lowest, std::span<const double> highest);
   Grid grid_for(double least_doubt, std::span<const double> lowest, std::span<const double> highest) const;
   void lay_out(std::span<const double> lowest, std::span<const double> highest, const Layout& layout);
   void bound_error(std::span<const double> lowest, std::span<const double> highest);
   void tabulate_block(int block, std::span<double> table) const;
-  void add_member(int j, std::span<double> chances, std::span<double> above, std::span<double> z) const;
-  Value on_grid(int i, double centre) const;
+  void tabulate_layer(int block, std::size_t layer, std::span<double> table) const;
+  void add_member(int j, double shift, std::span<double> chances, std::span<double> above, std::span<double> z) const;
+  Value on_grid(int i, std::size_t layer, double centre) const;
+  Value over_layers(int i, double t) const;
   Value directly(int i, double t) const;
   double node(std::size_t k) const { return grid_.first + grid_.step * static_cast<double>(k); }
+  /// M - mu of a layer.
+  double shift(std::size_t layer) const { return first_shift_ + layer_step_ * static_cast<double>(layer); }
   int block_size() const;
 
   double prior_mean_;
@@ -70,6 +78,9 @@ class TurnoutCurve {
   std::vector<double> weight_;
   double total_;
   double least_width2_ = 0.0;  // min_j spread_j / pull_j^2
+  double layers_ = 1.0;
+  double layer_step_ = 0.0;
+  double first_shift_ = 0.0;
   Grid grid_;
   double least_doubt_ = 0.0;  // of the members on the grid
   std::size_t nodes_ = 0;

@@ -8,8 +8,8 @@
 // A row is gathered speaker by speaker: C_ij > 0 only where j holds a signal that i holds, or sits in one of i's
 // audiences. The work is the number of such meetings, and one scratch array of n sums serves all rows.
 //
-// Groups are expanded into pairs for now: a broadcast heard by everybody has n^2 of them, and callers must ask
-// pairs_at_most first.
+// Groups are expanded into pairs, all but the common report, which the curve counts: callers must ask pairs_at_most
+// first.
 
 namespace folkmote {
 
@@ -50,16 +50,24 @@ Holders holders_of(const Knowledge& knowledge) {
 /// Whose signals and broadcasts reach whom, prepared once for all rows.
 class Sources {
  public:
-  explicit Sources(const Knowledge& knowledge)
-      : knowledge(knowledge), holders(holders_of(knowledge)), broadcasts_of(knowledge.size), held(knowledge.size) {
+  Sources(const Knowledge& knowledge, const std::optional<CommonReport>& common)
+      : knowledge(knowledge),
+        common(common),
+        holders(holders_of(knowledge)),
+        broadcasts_of(knowledge.size),
+        held(knowledge.size) {
     for (std::size_t q = 0; q < knowledge.broadcasts.size(); ++q) {
+      if (common && common->counted[q]) continue;
       for (int i : knowledge.broadcasts[q].audience) broadcasts_of[i].push_back(static_cast<int>(q));
     }
     for (int i = 0; i < knowledge.size; ++i) {
       each(i, [&](int, double precision) { held[i].add(precision); });
       for (int q : broadcasts_of[i]) held[i].add(knowledge.broadcasts[q].precision);
+      if (hear_common(i, i)) held[i].add(common->precision);
     }
   }
+
+  bool hear_common(int i, int j) const { return common && common->audience[i] && common->audience[j]; }
 
   /// Sources of i in increasing order of speaker, its own signal in its place: the order of K_i, so that K_i - C_ij is
   /// exactly 0 where j holds all that i holds.
@@ -77,6 +85,7 @@ class Sources {
   }
 
   const Knowledge& knowledge;
+  const std::optional<CommonReport>& common;
   Holders holders;
   std::vector<std::vector<int>> broadcasts_of;
   std::vector<TwoSum> held;  // K_i
@@ -102,7 +111,7 @@ class RowBuilder {
     return std::min(count, static_cast<std::size_t>(knowledge_.size));
   }
 
-  /// Members met by i, i itself left out, in order of first meeting: those heard come first.
+  /// Members heard by i, then those met who share information of their own with i, i itself left out.
   const std::vector<int>& gather(int i) {
     for (int j : met_) seen_[j] = 0;
     met_.clear();
@@ -115,6 +124,17 @@ class RowBuilder {
       for (int j : knowledge_.broadcasts[q].audience) add(j, knowledge_.broadcasts[q].precision);
     }
     seen_[i] = 0;
+    std::size_t kept = static_cast<std::size_t>(knowledge_.start[i + 1] - knowledge_.start[i]);
+    for (std::size_t k = kept; k < met_.size(); ++k) {
+      if (sums_[met_[k]].value() > 0.0)
+        met_[kept++] = met_[k];
+      else
+        seen_[met_[k]] = 0;
+    }
+    met_.resize(kept);
+    for (int j : met_) {
+      if (sources_.hear_common(i, j)) sums_[j].add(sources_.common->precision);
+    }
     return met_;
   }
 
@@ -160,36 +180,23 @@ class RowBuilder {
 
 }  // namespace
 
-ThetaLaws::ThetaLaws(const Knowledge& knowledge) {
-  const double alpha = knowledge.prior_precision;
-  for (int i = 0; i < knowledge.size; ++i) {
-    const double p = knowledge.posterior_precision[i];
-    const double stake = knowledge.stake_sd[i] * knowledge.stake_sd[i];
-    const double noise = knowledge.held[i] / p / p;
-    pull.push_back(knowledge.held[i] / p);
-    spread.push_back(noise + stake);
-    const double variance = knowledge.index_variance[i];
-    trust.push_back(variance > 0.0 ? knowledge.estimate_variance[i] / variance : 0.0);
-    // E_i / alpha - V_i^2 = K_i / (alpha p_i^2) + sigma_i^2 / alpha.
-    doubt.push_back(variance > 0.0 ? (noise + stake) / alpha / variance : 1.0 / alpha);
-  }
-}
-
-double Overlap::pairs_at_most(const Knowledge& knowledge) {
+double Overlap::pairs_at_most(const Knowledge& knowledge, const std::optional<CommonReport>& common) {
   std::vector<double> holders(knowledge.size, 1.0);
   for (int speaker : knowledge.speaker) holders[speaker] += 1.0;
   double pairs = 0.0;
   for (double count : holders) pairs += count * count;
-  for (const Broadcast& broadcast : knowledge.broadcasts) {
-    pairs += static_cast<double>(broadcast.audience.size()) * static_cast<double>(broadcast.audience.size());
+  for (std::size_t q = 0; q < knowledge.broadcasts.size(); ++q) {
+    const double heard_by = static_cast<double>(knowledge.broadcasts[q].audience.size());
+    if (!common || !common->counted[q]) pairs += heard_by * heard_by;
   }
   return pairs;
 }
 
-Overlap::Overlap(const Knowledge& knowledge, bool only_heard, const Execution& execution)
+Overlap::Overlap(const Knowledge& knowledge, const std::optional<CommonReport>& common, bool only_heard,
+                 const Execution& execution)
     : block_size_(std::max(1024, (knowledge.size + most_blocks - 1) / most_blocks)),
       blocks_((knowledge.size + block_size_ - 1) / block_size_) {
-  const Sources sources(knowledge);
+  const Sources sources(knowledge, common);
   run_tasks(static_cast<std::int64_t>(blocks_.size()), execution, [&](std::int64_t b, const StopFlag& stop) {
     RowBuilder builder(sources, only_heard);
     Block& block = blocks_[b];
@@ -206,9 +213,8 @@ Overlap::Overlap(const Knowledge& knowledge, bool only_heard, const Execution& e
       const std::vector<int>& met = builder.gather(i);
       for (std::size_t k = 0; k < met.size(); ++k) {
         const int j = met[k];
-        const double shared = builder.shared(j);
-        if (k >= heard && !(shared > 0.0)) continue;
-        const ConditionalLaw law = pair_law(knowledge, i, j, shared, builder.unshared(i, j), builder.unshared(j, j));
+        const ConditionalLaw law =
+            pair_law(knowledge, i, j, builder.shared(j), builder.unshared(i, j), builder.unshared(j, j));
         block.member.push_back(static_cast<std::uint32_t>(j) | (k < heard ? 0x80000000U : 0U));
         block.one_less_rho.push_back(law.one_less_rho);
         block.sd.push_back(law.sd);

@@ -35,7 +35,7 @@ double peak_gigabytes() {
 }
 
 /// A community without tables: building labels for 10^6 members is not what is measured.
-Study bare_study(int size) {
+Study bare_study(int size, bool radio) {
   drawn::Numbers numbers(7);
   auto roster = std::make_shared<Roster>();
   Community community;
@@ -61,26 +61,32 @@ Study bare_study(int size) {
   }
   community.links.relay_precision.assign(community.links.speaker.size(), std::numeric_limits<double>::infinity());
   roster->community_of_row.assign(size, 0);
+  if (radio) {
+    Broadcast to_all{2.0, {}};
+    for (int i = 0; i < size; ++i) to_all.audience.push_back(i);
+    community.broadcasts.push_back(std::move(to_all));
+  }
   Study study;
   study.roster = roster;
   study.communities.push_back(std::move(community));
   return study;
 }
 
-void measure(int size, int threads) {
-  const Study study = bare_study(size);
+void measure(int size, int threads, bool radio) {
+  const Study study = bare_study(size, radio);
   const Beliefs beliefs = studies::beliefs(0.4, 1.0, 2.0, 0.1);
   auto start = std::chrono::steady_clock::now();
   const double before = processor_seconds();
   const Knowledge knowledge = make_knowledge(study, beliefs, 0);
-  CurveGame game(knowledge, make_stakes(study, Payoff{}, 0), {threads, {}});
+  std::optional<CurveGame> made = curve_game(knowledge, make_stakes(study, Payoff{}, 0), {threads, {}});
+  CurveGame& game = made.value();
   const double prepared = seconds_since(start);
   const Enclosure found = enclose_large(game, SolveRule{}, {threads, {}});
   const double total = seconds_since(start);
-  std::printf("%9d %8.2f %8.2f %8.2f %7lld %6zu %7d %8.2f  %s\n", size, prepared, total, processor_seconds() - before,
-              static_cast<long long>(found.iterations), game.curve().nodes(), game.curve().direct_members(),
-              peak_gigabytes(), verdict_text(found.verdict));
-  if (size > 2000) return;
+  std::printf("%9d %8.2f %8.2f %8.2f %7lld %6zu %7.0f %7d %8.2f  %s\n", size, prepared, total,
+              processor_seconds() - before, static_cast<long long>(found.iterations), game.curve().nodes(),
+              game.curve().layers(), game.curve().direct_members(), peak_gigabytes(), verdict_text(found.verdict));
+  if (size > 2000 || radio) return;
   start = std::chrono::steady_clock::now();
   const SharedInformation shared(knowledge);
   BestReply dense(knowledge, shared, make_stakes(study, Payoff{}, 0));
@@ -96,9 +102,14 @@ int main(int argc, char** argv) {
   const int largest = argc > 1 ? std::atoi(argv[1]) : 100000;
   const int threads = argc > 2 ? std::atoi(argv[2]) : 2;
   std::printf(
-      "  members  prepare    total      cpu  sweeps  nodes  direct  peak GB  verdict    (seconds, %d threads)\n",
+      "  members  prepare    total      cpu  sweeps  nodes  layers  direct  peak GB  verdict    (seconds, %d "
+      "threads)\n",
       threads);
   for (int size : {1000, 2000, 10000, 100000, 1000000}) {
-    if (size <= largest) measure(size, threads);
+    if (size <= largest) measure(size, threads, false);
+  }
+  std::printf("with a broadcast heard by everybody (tau = 2)\n");
+  for (int size : {2000, 10000, 100000}) {
+    if (size <= largest) measure(size, threads, true);
   }
 }
