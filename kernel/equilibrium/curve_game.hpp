@@ -52,6 +52,15 @@ class CurveGame {
   /// max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)), never smaller than that.
   double contraction_bound() const;
 
+  /// Prepares along() for a direction 0 < v <= 1 at the cutoffs set; false where gains jump.
+  bool set_direction(std::span<const double> direction, const Execution& execution);
+  /// R_i(v) = b_i sum_j w_ij phi(z_ij) (v_j - rho_ij v_i) / s_ij at the cutoffs set: when all cutoffs, t with them,
+  /// move by r v, F_i moves at the rate R_i(v) - v_i. Not less than that, errors included, when `outward` is 1; not
+  /// more when it is -1.
+  double along(int member, double outward) const;
+  /// At least |dR_i(v)/dr|: b_i sum_j w_ij max|phi'| / s_ij^2.
+  double curvature(int member) const { return curvature_[member]; }
+
   const TurnoutCurve& curve() const { return curve_; }
 
  private:
@@ -63,6 +72,8 @@ class CurveGame {
   Pairs pairs(int member, double t) const;
 
   double error_bound(int member) const;
+  void bound_curvature(const Execution& execution);
+  double pairs_along(int member, double& error) const;
 
   /// What a pair needs of the other member, side by side: one line of memory is fetched for it, not four.
   struct Partner {
@@ -82,6 +93,9 @@ class CurveGame {
   std::vector<Partner> partners_;
   double largest_ = 0.0;  // size of the largest cutoff
   std::vector<double> error_;
+  std::vector<double> direction_;
+  std::vector<double> curvature_;  // empty until it is asked for
+  bool has_step_ = false;          // some pair's index is certain
   BestReply::Limit limit_ = BestReply::Limit::left;
 };
 

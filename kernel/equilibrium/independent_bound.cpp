@@ -25,11 +25,13 @@ IndependentBound::IndependentBound(const ThetaLaws& laws, std::span<const double
     : laws_(laws), class_of_(weight.size()) {
   classify(weight);
   for (const Class& of_i : classes_) {
-    double sum = 0.0;
+    double sum = 0.0, inverse = 0.0;
     for (const Class& of_j : classes_) {
       sum += of_j.weight * ratio(of_j.pull, of_j.spread, of_i.trust, of_i.doubt);
+      inverse += of_j.weight / (of_j.spread + of_j.pull * of_j.pull * of_i.doubt);
     }
     sums_.push_back(sum);
+    inverse_variances_.push_back(inverse);
   }
 }
 

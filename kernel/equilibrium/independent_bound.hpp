@@ -1,5 +1,6 @@
 #pragma once
-// sum_j omega_j (1 - rho_ij) / s_ij over everybody, every pair taken as independent given theta, without n^2 terms.
+// sum_j omega_j (1 - rho_ij) / s_ij, and sum_j omega_j / s_ij^2, over everybody, every pair taken as independent given
+// theta, without n^2 terms.
 #include "numerics/strict.hpp"
 
 #include <span>
@@ -19,6 +20,9 @@ class IndependentBound {
   /// At least the sum for member i.
   double sum(int member) const { return sums_[class_of_[member]]; }
 
+  /// At least sum_j omega_j / s_ij^2.
+  double inverse_variances(int member) const { return inverse_variances_[class_of_[member]]; }
+
   /// The term of the pair (i, j) itself: (1 - rho_ij) / s_ij without shared information.
   double term(int i, int j) const;
 
@@ -32,6 +36,7 @@ class IndependentBound {
   std::vector<int> class_of_;
   std::vector<Class> classes_;
   std::vector<double> sums_;
+  std::vector<double> inverse_variances_;
 };
 
 }  // namespace folkmote

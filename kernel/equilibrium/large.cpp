@@ -14,7 +14,14 @@
 // other.
 //
 // Otherwise, or when mixing does not get there, monotone best replies from both ends (Milgrom & Roberts 1990), each
-// certified as in end.cpp along k = u -+ e v, v = 1 or the direction of the last steps.
+// certified as in end.cpp along k = u -+ e v, v = 1 or the direction of the last steps. Where sweeps are slow they
+// leap: on the way from u to u -+ r v gain i is at most (for the other end: at least)
+//   F_i(u) + r (v_i - R_i(v)) + r^2 L_i / 2,
+// R_i(v) and L_i >= |dR_i/dr| from CurveGame. As long as no gain can change its sign on the way, no equilibrium is
+// passed: the first cutoff to meet its own would have a gain of 0 there.
+//
+// An enclosure that has closed without a proof is tried once more: with v > 0 and every R_i(v) below v_i all over the
+// small box, there is one equilibrium (the argument is uniqueness.cpp's).
 
 namespace folkmote {
 
@@ -137,6 +144,7 @@ class LargeSolver {
     Limit limit;
     double sign;  // +1: falls to the greatest equilibrium, -1: rises to the least
     double last = 0.0;
+    std::vector<double> steps = {};
     std::int64_t sweeps = 0;
     bool certified = false;
     bool stalled = false;
@@ -146,26 +154,73 @@ class LargeSolver {
     const std::vector<double> image = replies(end.cutoffs, end.limit);
     ++end.sweeps;
     double largest = 0.0;
-    std::vector<double> steps(image.size());
+    end.steps.resize(image.size());
     for (std::size_t i = 0; i < image.size(); ++i) {
       // Errors of the gains may not carry the iterate past the equilibrium: the slope is at most -1.
       const double error = game_.error(static_cast<int>(i));
       const double outward = image[i] + end.sign * error;
       const double next = end.sign > 0.0 ? std::min(outward, end.cutoffs[i]) : std::max(outward, end.cutoffs[i]);
-      steps[i] = std::fabs(next - end.cutoffs[i]);
-      largest = std::max(largest, steps[i]);
+      end.steps[i] = std::fabs(next - end.cutoffs[i]);
+      largest = std::max(largest, end.steps[i]);
       end.cutoffs[i] = next;
+    }
+    if (largest > 0.0) {
+      for (double& step : end.steps) step = std::max(step / largest, 0.05);
     }
     if (largest <= slack_) {
       end.certified =
-          signs_agree(end.cutoffs, std::vector<double>(steps.size(), 1.0), -end.sign * slack_, end.sign, end.limit);
+          signs_agree(end.cutoffs, std::vector<double>(image.size(), 1.0), -end.sign * slack_, end.sign, end.limit);
       if (!end.certified && largest > 0.0 && largest < 0.1 * slack_) {
-        for (double& step : steps) step = std::max(step / largest, 0.05);
-        end.certified = signs_agree(end.cutoffs, steps, -end.sign * slack_, end.sign, end.limit);
+        end.certified = signs_agree(end.cutoffs, end.steps, -end.sign * slack_, end.sign, end.limit);
       }
       end.stalled = !end.certified && largest == 0.0;
     }
+    constexpr double slow = 0.3;
+    const bool leap_now = largest > slow * end.last && end.sweeps > 2 && !end.certified;
     end.last = largest;
+    if (leap_now && leap(end)) end.last = std::numeric_limits<double>::infinity();
+  }
+
+  /// Moves along the last steps as far as is proved safe; false where that is not worth a sweep.
+  bool leap(MonotoneEnd& end) {
+    game_.set(end.cutoffs, end.limit, execution_);
+    ++iterations_;
+    if (!game_.set_direction(end.steps, execution_)) return false;
+    std::vector<double> furthest(end.cutoffs.size());
+    for_members([&](int i) {
+      const double gain = std::max(0.0, -end.sign * game_.gain(i, end.cutoffs[i]).value - game_.error(i));
+      const double rate = end.steps[i] - game_.along(i, -1.0);
+      const double root = std::sqrt(rate * rate + 2.0 * game_.curvature(i) * gain);
+      const double sum = rate + root;
+      furthest[i] = sum > 0.0 ? 2.0 * gain / sum : (gain > 0.0 ? std::numeric_limits<double>::infinity() : 0.0);
+    });
+    const double step = 0.999 * *std::min_element(furthest.begin(), furthest.end());
+    if (!std::isfinite(step) || step < 0.1 * slack_) return false;
+    for (std::size_t i = 0; i < end.cutoffs.size(); ++i) end.cutoffs[i] -= end.sign * step * end.steps[i];
+    return true;
+  }
+
+  /// Whether some v proves that the box holds one equilibrium at most; the bound tells how.
+  void try_box(const std::vector<double>& least, const std::vector<double>& greatest) {
+    constexpr int rounds = 12;
+    const double wide = 2.0 * width(least, greatest) + 1e-12;
+    game_.set(least, Limit::left, execution_);
+    std::vector<double> v(least.size(), 1.0), image(least.size());
+    for (int round = 0; round < rounds && bound_ >= 1.0; ++round) {
+      ++iterations_;
+      if (!game_.set_direction(v, execution_)) return;
+      // Over the box kappa_j - rho kappa_i moves by at most 2 (greatest - least).
+      for_members([&](int i) { image[i] = game_.along(i, 1.0) + wide * game_.curvature(i); });
+      double worst = 0.0, largest = 0.0;
+      for (std::size_t i = 0; i < v.size(); ++i) worst = std::max(worst, image[i] / v[i]);
+      if (!std::isfinite(worst)) return;
+      bound_ = std::min(bound_, worst * (1.0 + 1e-9));
+      for (std::size_t i = 0; i < v.size(); ++i) {
+        v[i] = std::max(0.5 * (v[i] + image[i]), 1e-6);
+        largest = std::max(largest, v[i]);
+      }
+      for (double& entry : v) entry = std::max(entry / largest, 1e-3);
+    }
   }
 
   Enclosure enclose_monotonically() {
@@ -187,6 +242,7 @@ class LargeSolver {
     Enclosure found;
     const double wide = width(least.cutoffs, greatest.cutoffs);
     Verdict verdict = Verdict::not_converged;
+    if (wide <= tolerance_ && bound_ >= 1.0) try_box(least.cutoffs, greatest.cutoffs);
     if (wide <= tolerance_)
       verdict = bound_ < 1.0 ? Verdict::proved_unique : Verdict::bracketed;
     else if (least.certified && greatest.certified && bound_ >= 1.0)

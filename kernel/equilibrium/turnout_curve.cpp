@@ -158,20 +158,8 @@ void TurnoutCurve::tabulate(std::span<const double> cutoffs, bool steps_act, con
   cutoffs_.assign(cutoffs.begin(), cutoffs.end());
   steps_act_ = steps_act;
   if (nodes_ == 0) return;
-  const int count = (static_cast<int>(weight_.size()) + block_size() - 1) / block_size();
-  const std::size_t entries = table_.size();
-  std::vector<double> tables(static_cast<std::size_t>(count) * entries, 0.0);
-  run_tasks(count, execution, [&](std::int64_t block, const StopFlag& stop) {
-    const std::span<double> own(tables.data() + static_cast<std::size_t>(block) * entries, entries);
-    for (std::size_t layer = 0; layer * nodes_ < entries && !stop.raised(); ++layer) {
-      tabulate_layer(static_cast<int>(block), layer, own.subspan(layer * nodes_, nodes_));
-    }
-  });
-  for (std::size_t k = 0; k < entries; ++k) {
-    TwoSum sum;
-    for (int block = 0; block < count; ++block) sum.add(tables[static_cast<std::size_t>(block) * entries + k]);
-    table_[k] = sum.value();
-  }
+  sum_blocks(table_, execution,
+             [&](int block, std::size_t layer, std::span<double> table) { tabulate_layer(block, layer, table); });
 }
 
 void TurnoutCurve::tabulate_layer(int block, std::size_t layer, std::span<double> table) const {
@@ -192,10 +180,7 @@ void TurnoutCurve::tabulate_layer(int block, std::size_t layer, std::span<double
   }
 }
 
-/// Adds one member's chance of acting at every node: 1 below the nodes where it is in doubt, 0 above them. `above[k]`
-/// takes the weight of those for whom k is the first node in doubt.
-void TurnoutCurve::add_member(int j, double shift, std::span<double> chances, std::span<double> above,
-                              std::span<double> z) const {
+TurnoutCurve::Zone TurnoutCurve::zone_of(int j, double shift) const {
   const double margin = (cutoffs_[j] - prior_mean_) - shift;
   const double pull = laws_.pull[j];
   const double width = std::sqrt(laws_.spread[j] + grid_.smoothing * pull * pull);
@@ -210,13 +195,22 @@ void TurnoutCurve::add_member(int j, double shift, std::span<double> chances, st
     from = std::min(nodes, std::max(0.0, std::floor(middle - around)));
     to = std::min(nodes, std::max(from, std::floor(middle + around) + 2.0));
   }
-  const std::size_t begin = static_cast<std::size_t>(from), count = static_cast<std::size_t>(to) - begin;
-  above[begin] += weight_[j];
-  const std::span<double> zone = z.first(count);
-  for (std::size_t k = 0; k < count; ++k) zone[k] = (margin - pull * (node(begin + k) - prior_mean_)) / width;
-  normal_cdf(zone, zone);
-  const double weight = weight_[j];
-  for (std::size_t k = 0; k < count; ++k) chances[begin + k] += weight * zone[k];
+  return {static_cast<std::size_t>(from), static_cast<std::size_t>(to) - static_cast<std::size_t>(from), margin, width};
+}
+
+/// Adds one member's chance of acting at every node. `above[k]` takes the weight of those for whom k is the first node
+/// in doubt.
+void TurnoutCurve::add_member(int j, double shift, std::span<double> chances, std::span<double> above,
+                              std::span<double> z) const {
+  const Zone zone = zone_of(j, shift);
+  const double pull = laws_.pull[j], weight = weight_[j];
+  above[zone.begin] += weight;
+  const std::span<double> chance = z.first(zone.count);
+  for (std::size_t k = 0; k < zone.count; ++k) {
+    chance[k] = (zone.margin - pull * (node(zone.begin + k) - prior_mean_)) / zone.width;
+  }
+  normal_cdf(chance, chance);
+  for (std::size_t k = 0; k < zone.count; ++k) chances[zone.begin + k] += weight * chance[k];
 }
 
 double TurnoutCurve::independent_z(int i, int j, double t) const {
@@ -227,13 +221,16 @@ double TurnoutCurve::independent_z(int i, int j, double t) const {
 }
 
 TurnoutCurve::Value TurnoutCurve::expect(int i, double t) const {
-  if (laws_.doubt[i] < least_doubt_) return directly(i, t);
-  if (laws_.common) return over_layers(i, t);
-  return on_grid(i, 0, prior_mean_ + laws_.trust[i] * (t - prior_mean_));
+  return laws_.doubt[i] < least_doubt_ ? directly(i, t) : from_table(table_, i, t);
 }
 
-/// The integral over M of what on_grid gives at each layer. The slope leaves out that t moves M too.
-TurnoutCurve::Value TurnoutCurve::over_layers(int i, double t) const {
+TurnoutCurve::Value TurnoutCurve::from_table(const std::vector<double>& table, int i, double t) const {
+  if (laws_.common) return over_layers(table, i, t);
+  return on_grid(table, i, 0, prior_mean_ + laws_.trust[i] * (t - prior_mean_));
+}
+
+/// The integral over M of what on_grid gives at each layer.
+TurnoutCurve::Value TurnoutCurve::over_layers(const std::vector<double>& table, int i, double t) const {
   const double s = std::sqrt(laws_.haze[i]);
   const double centre = laws_.hint[i] * (t - prior_mean_);
   const double low = std::max(0.0, std::floor((centre - reach * s - first_shift_) / layer_step_));
@@ -243,15 +240,16 @@ TurnoutCurve::Value TurnoutCurve::over_layers(int i, double t) const {
     const double z = (shift(l) - centre) / s;
     const double weight = layer_step_ / s * normal_density(z);
     const double turned = (t - prior_mean_) - laws_.sway[i] * shift(l);
-    const Value value = on_grid(i, l, prior_mean_ + laws_.grip[i] * turned);
+    const Value value = on_grid(table, i, l, prior_mean_ + laws_.grip[i] * turned);
     share.add(weight * value.share);
-    slope.add(weight * value.slope);
+    slope.add(weight * (value.slope + z / s * laws_.hint[i] * value.share));
   }
   return {share.value(), slope.value()};
 }
 
-TurnoutCurve::Value TurnoutCurve::on_grid(int i, std::size_t layer, double centre) const {
-  const double* table = table_.data() + layer * nodes_;
+TurnoutCurve::Value TurnoutCurve::on_grid(const std::vector<double>& all, int i, std::size_t layer,
+                                          double centre) const {
+  const double* table = all.data() + layer * nodes_;
   constexpr std::size_t most = 256;
   const double s = std::sqrt(laws_.doubt[i] - grid_.smoothing);
   const double low = std::max(0.0, std::floor((centre - reach * s - grid_.first) / grid_.step));

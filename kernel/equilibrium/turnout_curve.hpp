@@ -7,6 +7,7 @@
 #include <vector>
 
 #include "information/overlap.hpp"
+#include "information/two_sum.hpp"
 #include "parallel/workers.hpp"
 
 namespace folkmote {
@@ -33,9 +34,17 @@ class TurnoutCurve {
 
   struct Value {
     double share;  // X_i(t)
-    double slope;  // dX_i/dt
+    double slope;  // dX_i/dt; 0 where it is summed over everybody
   };
   Value expect(int i, double t) const;
+
+  /// Tabulates how the curve moves with the cutoffs along a direction v; false where that has no derivative, because
+  /// some index is certain.
+  bool tabulate_direction(std::span<const double> direction, const Execution& execution);
+  /// Sum of omega_j phi(z_ij) (v_j - rho_ij v_i) / s_ij over all j: how X_i moves when cutoffs, and t with them, do.
+  double along(int i, double t) const;
+  /// Bound on the error of along().
+  double error_along() const { return error_along_; }
 
   /// P(e_j <= kappa_j | e_i = t) as if the two shared no information but the common report: the argument of Phi.
   double independent_z(int i, int j, double t) const;
@@ -63,10 +72,22 @@ class TurnoutCurve {
   void lay_out(std::span<const double> lowest, std::span<const double> highest, const Layout& layout);
   void bound_error(std::span<const double> lowest, std::span<const double> highest);
   void tabulate_block(int block, std::span<double> table) const;
+  /// Sums over all members, block by block: add(block, layer, its own table of the layer).
+  template <class Add>
+  void sum_blocks(std::vector<double>& table, const Execution& execution, const Add& add) const;
   void tabulate_layer(int block, std::size_t layer, std::span<double> table) const;
+  void tabulate_direction_layer(int block, std::size_t layer, std::span<double> table) const;
+  /// Nodes at which a member is in doubt: its chance is 1 below them and 0 above.
+  struct Zone {
+    std::size_t begin, count;
+    double margin, width;
+  };
+  Zone zone_of(int j, double shift) const;
   void add_member(int j, double shift, std::span<double> chances, std::span<double> above, std::span<double> z) const;
-  Value on_grid(int i, std::size_t layer, double centre) const;
-  Value over_layers(int i, double t) const;
+  Value on_grid(const std::vector<double>& table, int i, std::size_t layer, double centre) const;
+  Value over_layers(const std::vector<double>& table, int i, double t) const;
+  Value from_table(const std::vector<double>& table, int i, double t) const;
+  double directly_along(int i, double t) const;
   Value directly(int i, double t) const;
   double node(std::size_t k) const { return grid_.first + grid_.step * static_cast<double>(k); }
   /// M - mu of a layer.
@@ -89,6 +110,27 @@ class TurnoutCurve {
   bool steps_act_ = true;
   std::vector<double> cutoffs_;
   std::vector<double> table_;
+  std::vector<double> direction_;
+  std::vector<double> direction_table_;
+  double error_along_ = 0.0;
 };
+
+template <class Add>
+void TurnoutCurve::sum_blocks(std::vector<double>& table, const Execution& execution, const Add& add) const {
+  const int count = (static_cast<int>(weight_.size()) + block_size() - 1) / block_size();
+  const std::size_t entries = table.size();
+  std::vector<double> tables(static_cast<std::size_t>(count) * entries, 0.0);
+  run_tasks(count, execution, [&](std::int64_t block, const StopFlag& stop) {
+    const std::span<double> own(tables.data() + static_cast<std::size_t>(block) * entries, entries);
+    for (std::size_t layer = 0; layer * nodes_ < entries && !stop.raised(); ++layer) {
+      add(static_cast<int>(block), layer, own.subspan(layer * nodes_, nodes_));
+    }
+  });
+  for (std::size_t k = 0; k < entries; ++k) {
+    TwoSum sum;
+    for (int block = 0; block < count; ++block) sum.add(tables[static_cast<std::size_t>(block) * entries + k]);
+    table[k] = sum.value();
+  }
+}
 
 }  // namespace folkmote

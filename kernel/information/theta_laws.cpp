@@ -2,8 +2,8 @@
 
 #include <algorithm>
 
-// m_j = (alpha mu + ... + tau z) / p_j with z = theta + zeta and alpha M = alpha mu + tau zeta is the pooled estimate of
-// a member whose prior mean is M: its precision still holds tau, but its noise does not. Everything else is normal
+// m_j = (alpha mu + ... + tau z) / p_j with z = theta + zeta and alpha M = alpha mu + tau zeta is the pooled estimate
+// of a member whose prior mean is M: its precision still holds tau, but its noise does not. Everything else is normal
 // regression, written as sums of terms that are not negative: with E' = Var(e_i | M) = pull^2 / alpha + spread,
 //   grip = (pull / alpha) / E',  doubt = spread / (alpha E'),  hint = sway Var(M) / E_i,  haze = Var(M) E' / E_i.
 

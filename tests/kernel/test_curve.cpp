@@ -52,7 +52,56 @@ void check_gains(Compared& c, std::uint64_t seed) {
   }
 }
 
+/// The bound over the whole line is never smaller than the dense form's, and a little larger at most; a common report
+/// leaves it valid, but wider.
+void check_bound(const Compared& c) {
+  const double dense = c.dense.contraction_bound(), curve = c.curve.contraction_bound();
+  if (!std::isfinite(dense)) return;
+  CHECK(curve >= dense * (1.0 - 1e-12));
+  if (!c.common) CHECK(curve <= dense * (1.0 + 1e-6) + 1e-9);
+}
+
+/// R_i(v) a little further along: it may have changed by the curvature at most.
+void check_curvature(Compared& c, std::vector<double> cutoffs, const std::vector<double>& direction) {
+  const double step = 0.01;
+  std::vector<double> before;
+  for (int i = 0; i < c.dense.size(); ++i) before.push_back(c.curve.along(i, -1.0));
+  for (std::size_t i = 0; i < cutoffs.size(); ++i) cutoffs[i] += step * direction[i];
+  c.curve.set(cutoffs, BestReply::Limit::left, {});
+  REQUIRE(c.curve.set_direction(direction, {}));
+  for (int i = 0; i < c.dense.size(); ++i) {
+    CHECK(std::fabs(c.curve.along(i, -1.0) - before[i]) <= step * c.curve.curvature(i) + 1e-9);
+  }
+}
+
+/// How gains move along a direction, against the sum of the dense form's derivatives.
+void check_along(Compared& c, std::uint64_t seed) {
+  drawn::Numbers numbers(seed);
+  const int n = c.dense.size();
+  std::vector<double> cutoffs(n), direction(n), row(n);
+  for (int i = 0; i < n; ++i) {
+    cutoffs[i] = c.dense.lowest(i) + 0.95 * numbers.unit() * (c.dense.highest(i) - c.dense.lowest(i));
+    direction[i] = numbers.between(0.05, 1.0);
+  }
+  c.curve.set(cutoffs, BestReply::Limit::left, {});
+  if (!c.curve.set_direction(direction, {})) return;
+  for (int i = 0; i < n; ++i) {
+    REQUIRE(c.dense.derivatives(i, cutoffs, row));
+    double change = 0.0, size = 1.0;
+    for (int j = 0; j < n; ++j) {
+      change += row[j] * direction[j];
+      size += std::fabs(row[j]);
+    }
+    const double high = c.curve.along(i, 1.0) - direction[i], low = c.curve.along(i, -1.0) - direction[i];
+    CHECK(high >= change - 1e-13 * size);
+    CHECK(low <= change + 1e-13 * size);
+    CHECK(high - low < 1e-8 * size);
+  }
+  check_curvature(c, cutoffs, direction);
+}
+
 void check_cutoffs(const Compared& c) {
+  check_bound(c);
   REQUIRE(c.curve_found.verdict != Verdict::not_converged);
   for (int i = 0; i < c.knowledge.size; ++i) {
     CHECK(std::fabs(c.curve_found.least[i] - c.dense_found.least[i]) < 1e-10);
@@ -63,11 +112,6 @@ void check_cutoffs(const Compared& c) {
     CHECK(c.curve_found.verdict == Verdict::several);
   else
     CHECK(c.curve_found.verdict != Verdict::several);
-  const double dense_bound = c.dense.contraction_bound();
-  if (std::isfinite(dense_bound)) CHECK(c.curve_found.contraction_bound >= dense_bound * (1.0 - 1e-12));
-  // A common report leaves the bound valid, but wider.
-  if (std::isfinite(dense_bound) && !c.common)
-    CHECK(c.curve_found.contraction_bound <= dense_bound * (1.0 + 1e-6) + 1e-9);
 }
 
 Case attachment(int size, double sigma, double beta, std::uint64_t seed, double mix = 0.0) {
@@ -87,6 +131,7 @@ TEST_CASE("gains and cutoffs of the curve equal the dense form with every featur
     CAPTURE(seed);
     Compared compared({made.study, made.beliefs, made.payoff});
     check_gains(compared, seed);
+    check_along(compared, seed);
     check_cutoffs(compared);
   }
 }
@@ -102,6 +147,7 @@ TEST_CASE("a report heard by many is counted by the curve as pairs would count i
     if (!compared.curve.serves()) continue;
     ++served;
     check_gains(compared, seed);
+    check_along(compared, seed);
     check_cutoffs(compared);
   }
   CHECK(with_common > 60);
@@ -116,6 +162,7 @@ TEST_CASE("gains and cutoffs of the curve equal the dense form on networks with 
         CAPTURE(sigma, beta, mix);
         Compared compared(attachment(90, sigma, beta, static_cast<std::uint64_t>(++k), mix), {1e-11, 100000});
         check_gains(compared, static_cast<std::uint64_t>(k));
+        check_along(compared, static_cast<std::uint64_t>(k));
         check_cutoffs(compared);
       }
     }
@@ -136,6 +183,27 @@ TEST_CASE("stars whose hub knows nearly everything, and everybody alike", "[curv
     check_gains(all, 3);
     check_cutoffs(all);
     CHECK(all.curve_found.verdict == Verdict::several);
+  }
+}
+
+// Morris & Shin (2003): with no links and equal members the whole line is no contraction once gamma >= 2 pi, and the
+// slope of the one equilibrium's equation is still below 1 for a mu away from 1/2 (re-derived; see gg_*.csv).
+TEST_CASE("large communities near the critical point take few sweeps, and are proved on the finished enclosure",
+          "[curve]") {
+  for (const double gamma : {0.9 * 6.283185307179586, 0.99 * 6.283185307179586, 7.0, 9.0}) {
+    // gamma = alpha^2 (alpha + beta) / (beta (alpha + 2 beta)) with alpha = 10 solved for beta.
+    const double alpha = 10.0;
+    const double b = gamma * alpha - alpha * alpha, a = 2.0 * gamma, c = -alpha * alpha * alpha;
+    const double beta = (-b + std::sqrt(b * b - 4.0 * a * c)) / (2.0 * a);
+    const Case made{studies::one_community(1200), studies::beliefs(0.62, alpha, beta, 0.0), {}};
+    const Solution solution = solve(made.study, made.beliefs, made.payoff, {}, {2, {}});
+    const Enclosure& found = solution.enclosures[0];
+    CAPTURE(gamma, found.iterations, found.width, found.contraction_bound);
+    CHECK(found.verdict == Verdict::proved_unique);
+    CHECK(found.iterations <= 60);
+    // kappa = Phi(sqrt(gamma) (kappa - mu)).
+    const double kappa = found.greatest[0];
+    CHECK(std::fabs(kappa - 0.5 * std::erfc(-std::sqrt(gamma) * (kappa - 0.62) / std::sqrt(2.0))) < 1e-9);
   }
 }
 
