@@ -9,6 +9,7 @@
 #include "information/two_sum.hpp"
 #include "numerics/normal.hpp"
 #include "numerics/sums.hpp"
+#include "numerics/two.hpp"
 
 // S_i(t) = (1 - mix) [ X_i(t) - omega_i Phi(z0_ii) + sum over overlapping j of omega_j (Phi(z_ij) - Phi(z0_ij)) ] /
 // (Omega - omega_i)
@@ -20,7 +21,6 @@ namespace folkmote {
 
 namespace {
 
-constexpr double infinity = std::numeric_limits<double>::infinity();
 constexpr int block = 256;  // pairs at a time
 constexpr double inverse_sqrt_two_pi = 0x1.9884533d43651p-2;
 
@@ -47,10 +47,13 @@ double sum_of_heard(std::span<const std::uint32_t> entries, std::span<const doub
 
 /// margins / sd; where sd is 0 the index is certain, and decides by the side on which it lies.
 void divide_by_sd(std::span<double> margins, std::span<const double> sd, bool steps_act) {
-  for (std::size_t k = 0; k < margins.size(); ++k) {
-    const double margin = margins[k];
-    const bool acts = steps_act ? margin >= 0.0 : margin > 0.0;
-    margins[k] = sd[k] > 0.0 ? margin / sd[k] : (acts ? infinity : -infinity);
+  std::size_t k = 0;
+  for (; k + 2 <= margins.size(); k += 2) store_two(&margins[k], load_two(&margins[k]) / load_two(&sd[k]));
+  for (; k < margins.size(); ++k) margins[k] /= sd[k];
+  for (k = 0; k < margins.size(); ++k) {
+    if (sd[k] > 0.0) continue;
+    // margin / 0: NaN at the cutoff itself, else an infinity of the right sign already.
+    if (std::isnan(margins[k])) margins[k] = steps_act ? infinity : -infinity;
   }
 }
 
@@ -146,38 +149,21 @@ void CurveGame::lay_apart(int member, double t, std::span<const std::uint32_t> e
   }
 }
 
-CurveGame::Gain CurveGame::gain(int member, double t) const {
+double CurveGame::gain(int member, double t) const {
   const Pairs sums = pairs(member, t);
-  double share = 0.0, slope = 0.0;
+  double share = 0.0;
   if (stakes_.mix < 1.0 && size() > 1) {
     const double weight = stakes_.weight[member];
     const double own = weight * normal_cdf(curve_.independent_z(member, member, t));
-    const TurnoutCurve::Value all = curve_.expect(member, t);
-    const double reached = (1.0 - stakes_.mix) / (curve_.total() - weight);
-    share += reached * (all.share - own + sums.correction);
-    slope += reached * all.slope;
+    const double others = curve_.expect(member, t).share - own + sums.correction;
+    share += (1.0 - stakes_.mix) * others / (curve_.total() - weight);
   }
   if (stakes_.mix > 0.0 && heard_weight_[member] > 0.0) share += stakes_.mix * sums.heard / heard_weight_[member];
-  const double benefit = stakes_.benefit[member];
-  return {benefit * share - stakes_.cost[member] - t, std::min(0.0, benefit * slope) - 1.0};
+  return stakes_.benefit[member] * share - stakes_.cost[member] - t;
 }
 
-bool CurveGame::mostly_independent() const {
-  const double all = static_cast<double>(size()) * static_cast<double>(size());
-  return stakes_.mix == 0.0 && static_cast<double>(overlap_.pairs()) < 0.02 * all;
-}
-
-CurveGame::Reply CurveGame::reply(int member, double from) const {
-  double first = 0.0;  // the gain at `from`, which reply_from asks for first
-  bool asked = false;
-  const double cutoff = reply_from(from, [&](double t) {
-    const double value = gain(member, t).value;
-    if (!asked) first = value;
-    asked = true;
-    return value;
-  });
-  const double moved = cutoff - from;
-  return {cutoff, moved == 0.0 ? -1.0 : std::min(-1.0, -first / moved)};
+double CurveGame::reply(int member, double from) const {
+  return reply_from(from, [&](double t) { return gain(member, t); });
 }
 
 /// What rounding can do to the sums over pairs, beside the curve's own error. Phi errs by a few units in its value, and

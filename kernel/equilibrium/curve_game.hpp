@@ -33,20 +33,11 @@ class CurveGame {
   /// Sets the cutoffs of everybody else and tabulates the curve.
   void set(std::span<const double> cutoffs, BestReply::Limit at_jump, const Execution& execution);
 
-  struct Gain {
-    double value;  // F_i(t; cutoffs set)
-    double slope;  // dF_i/dt were nobody to share information; at most -1
-  };
-  Gain gain(int member, double t) const;
-  struct Reply {
-    double cutoff;
-    double slope;  // of the chord from `from` to the cutoff: at most -1
-  };
+  /// F_i(t; cutoffs set).
+  double gain(int member, double t) const;
   /// The root of F_i from the side on which `from` lies, as BestReply::reply.
-  Reply reply(int member, double from) const;
-  /// Whether pairs that share information are so few that Gain::slope is near the slope.
-  bool mostly_independent() const;
-  /// Bound on the error of gain().value.
+  double reply(int member, double from) const;
+  /// Bound on the error of gain().
   double error(int member) const { return error_[member]; }
 
   /// max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)), never smaller than that.
@@ -60,6 +51,12 @@ class CurveGame {
   double along(int member, double outward) const;
   /// At least |dR_i(v)/dr|: b_i sum_j w_ij max|phi'| / s_ij^2.
   double curvature(int member) const { return curvature_[member]; }
+
+  /// Normal CDFs that one sweep takes when each gain is asked once: nodes, pairs and direct sums. For benches.
+  double evaluations() const {
+    const double n = static_cast<double>(size()), pairs = static_cast<double>(overlap_.pairs());
+    return curve_.evaluations() + n + 2.0 * pairs + n * static_cast<double>(curve_.direct_members());
+  }
 
   const TurnoutCurve& curve() const { return curve_; }
 

@@ -8,10 +8,11 @@
 
 // Two ways, chosen by the contraction bound.
 //
-// Below 1 there is one equilibrium, so that any way of finding it will do: best replies of everybody at once,
-// accelerated by Anderson mixing. It is accepted only when proved: F_i(k_i + e; k + e) <= 0 and F_i(k_i - e; k - e) >=
-// 0 for every i, errors of the gains included, put an equilibrium between k - e and k + e (Tarski), and there is no
-// other.
+// Below 1 there is one equilibrium, so that any way of finding it will do: best replies of everybody at once, to first
+// order, accelerated by Anderson mixing. It is accepted only when proved. With a contraction bound c the equilibrium is
+// no further from k than max_i |F_i(k_i; k)| / (1 - c). Where c is too near 1 for that, F_i(k_i + e; k + e) <= 0 and
+// F_i(k_i - e; k - e) >= 0 for every i, errors of the gains included, put an equilibrium between k - e and k + e
+// (Tarski), and there is no other.
 //
 // Otherwise, or when mixing does not get there, monotone best replies from both ends (Milgrom & Roberts 1990), each
 // certified as in end.cpp along k = u -+ e v, v = 1 or the direction of the last steps. Where sweeps are slow they
@@ -66,27 +67,34 @@ class LargeSolver {
   std::vector<double> replies(const std::vector<double>& cutoffs, Limit limit) {
     game_.set(cutoffs, limit, execution_);
     std::vector<double> image(cutoffs.size());
-    slopes_.resize(cutoffs.size());
-    for_members([&](int i) {
-      const CurveGame::Reply reply = game_.reply(i, cutoffs[i]);
-      image[i] = reply.cutoff;
-      slopes_[i] = reply.slope;
-    });
+    for_members([&](int i) { image[i] = game_.reply(i, cutoffs[i]); });
     ++iterations_;
     return image;
   }
 
-  /// Best replies to first order, at one evaluation of each gain: with the slopes of the last full replies, or, when
-  /// there were none, with those of the curve.
-  std::vector<double> quick_replies(const std::vector<double>& cutoffs) {
+  /// Best replies to first order, and the largest |F_i|, its error on top.
+  struct Step {
+    std::vector<double> image;
+    double largest_gain;
+  };
+
+  /// One evaluation of each gain, with the slopes taken last; two where they are taken anew, by a chord towards the
+  /// root.
+  Step step_from(const std::vector<double>& cutoffs, bool anew) {
     game_.set(cutoffs, Limit::left, execution_);
-    std::vector<double> image(cutoffs.size());
+    Step step{std::vector<double>(cutoffs.size()), 0.0};
+    std::vector<double> gains(cutoffs.size());
+    if (anew) slopes_.assign(cutoffs.size(), -1.0);
     for_members([&](int i) {
-      const CurveGame::Gain gain = game_.gain(i, cutoffs[i]);
-      image[i] = cutoffs[i] - gain.value / (slopes_.empty() ? gain.slope : slopes_[i]);
+      const double gain = game_.gain(i, cutoffs[i]);
+      if (anew && gain != 0.0)
+        slopes_[i] = std::min(-1.0, (game_.gain(i, cutoffs[i] + 0.5 * gain) - gain) / (0.5 * gain));
+      step.image[i] = cutoffs[i] - gain / slopes_[i];
+      gains[i] = std::fabs(gain) + game_.error(i);
     });
     ++iterations_;
-    return image;
+    step.largest_gain = *std::max_element(gains.begin(), gains.end());
+    return step;
   }
 
   /// Whether F_i at cutoffs + offset * direction is at most 0 (sign -1) or at least 0 (sign +1) for every i, errors of
@@ -97,7 +105,7 @@ class LargeSolver {
     for (std::size_t i = 0; i < moved.size(); ++i) moved[i] = cutoffs[i] + offset * direction[i];
     game_.set(moved, limit, execution_);
     std::vector<char> agrees(moved.size());
-    for_members([&](int i) { agrees[i] = sign * game_.gain(i, moved[i]).value >= game_.error(i); });
+    for_members([&](int i) { agrees[i] = sign * game_.gain(i, moved[i]) >= game_.error(i); });
     ++iterations_;
     return std::all_of(agrees.begin(), agrees.end(), [](char agree) { return agree != 0; });
   }
@@ -110,21 +118,20 @@ class LargeSolver {
     for (int i = 0; i < n; ++i) cutoffs[i] = 0.5 * (game_.lowest(i) + game_.highest(i));
     Mixing mixing;
     double last = std::numeric_limits<double>::infinity();
-    bool quick = game_.mostly_independent();
-    for (int step = 0; step < most && iterations_ < rule_.sweeps; ++step) {
-      const std::vector<double> image = quick ? quick_replies(cutoffs) : replies(cutoffs, Limit::left);
+    bool anew = true;
+    for (int k = 0; k < most && iterations_ < rule_.sweeps; ++k) {
+      const Step step = step_from(cutoffs, anew);
+      if (step.largest_gain <= slack_ * (1.0 - bound_)) return enclosure_around(cutoffs);
       double moved = 0.0;
-      for (int i = 0; i < n; ++i) moved = std::max(moved, std::fabs(image[i] - cutoffs[i]));
-      if (moved <= 0.5 * slack_ && signs_agree(image, ones, slack_, -1.0, Limit::right) &&
-          signs_agree(image, ones, -slack_, +1.0, Limit::left)) {
-        return enclosure_around(image);
+      for (int i = 0; i < n; ++i) moved = std::max(moved, std::fabs(step.image[i] - cutoffs[i]));
+      if (moved == 0.0 || (moved <= 0.01 * slack_ && signs_agree(step.image, ones, slack_, -1.0, Limit::right) &&
+                           signs_agree(step.image, ones, -slack_, +1.0, Limit::left))) {
+        return moved == 0.0 ? std::nullopt : std::optional(enclosure_around(step.image));
       }
-      if (moved == 0.0) return std::nullopt;
-      const bool helped = !(moved > 4.0 * last);
-      if (!helped) mixing.restart();
-      quick = !quick || helped;
+      anew = moved > 0.5 * last;
+      if (moved > 4.0 * last) mixing.restart();
       last = moved;
-      cutoffs = mixing.next(cutoffs, image);
+      cutoffs = mixing.next(cutoffs, step.image);
       for (int i = 0; i < n; ++i) cutoffs[i] = std::clamp(cutoffs[i], game_.lowest(i), game_.highest(i));
     }
     return std::nullopt;
@@ -188,7 +195,7 @@ class LargeSolver {
     if (!game_.set_direction(end.steps, execution_)) return false;
     std::vector<double> furthest(end.cutoffs.size());
     for_members([&](int i) {
-      const double gain = std::max(0.0, -end.sign * game_.gain(i, end.cutoffs[i]).value - game_.error(i));
+      const double gain = std::max(0.0, -end.sign * game_.gain(i, end.cutoffs[i]) - game_.error(i));
       const double rate = end.steps[i] - game_.along(i, -1.0);
       const double root = std::sqrt(rate * rate + 2.0 * game_.curvature(i) * gain);
       const double sum = rate + root;
@@ -272,7 +279,7 @@ class LargeSolver {
   double bound_;
   double tolerance_ = 0.0;
   double slack_ = 0.0;
-  std::vector<double> slopes_;  // of the gains, from the last full replies
+  std::vector<double> slopes_;  // of the gains, taken last
   std::int64_t iterations_ = 0;
 };
 

@@ -213,6 +213,16 @@ void TurnoutCurve::add_member(int j, double shift, std::span<double> chances, st
   for (std::size_t k = 0; k < zone.count; ++k) chances[zone.begin + k] += weight * chance[k];
 }
 
+double TurnoutCurve::evaluations() const {
+  double count = 0.0;
+  for (int j = 0; nodes_ > 0 && j < static_cast<int>(weight_.size()); ++j) {
+    for (double layer = 0.0; layer < layers_; layer += 1.0) {
+      count += static_cast<double>(zone_of(j, laws_.sway[j] * shift(static_cast<std::size_t>(layer))).count);
+    }
+  }
+  return count;
+}
+
 double TurnoutCurve::independent_z(int i, int j, double t) const {
   const double margin = (cutoffs_[j] - prior_mean_) - laws_.slope(i, j) * (t - prior_mean_);
   const double variance = laws_.variance(i, j);

@@ -56,6 +56,8 @@ class TurnoutCurve {
   std::size_t nodes() const { return nodes_; }
   /// Values of M at which the curve is tabulated. Infinite where they would be too many: the curve is then of no use.
   double layers() const { return layers_; }
+  /// Normal CDFs that one tabulation takes, for benches.
+  double evaluations() const;
   /// Members whose expectation is summed over everybody instead.
   int direct_members() const { return direct_members_; }
 

@@ -3,96 +3,72 @@
 //     bench_engine [largest size] [threads]
 #include "numerics/strict.hpp"
 
-#include <sys/resource.h>
-
-#include <chrono>
+#include <cmath>
 #include <cstdio>
 #include <cstdlib>
 
-#include "../kernel/small_studies.hpp"
-#include "equilibrium/large.hpp"
+#include "bench_study.hpp"
+#include "numerics/normal.hpp"
 
 using namespace folkmote;
 
 namespace {
 
-double seconds_since(std::chrono::steady_clock::time_point start) {
-  return std::chrono::duration<double>(std::chrono::steady_clock::now() - start).count();
+/// Nanoseconds of one normal CDF over an array: what an evaluation could cost at best.
+double nanoseconds_of_phi() {
+  constexpr int values = 4096, rounds = 2000;
+  std::vector<double> z(values), out(values);
+  for (int k = 0; k < values; ++k) z[k] = -4.0 + 8.0 * k / values;
+  const bench::Clock clock;
+  for (int round = 0; round < rounds; ++round) normal_cdf(z, out);
+  return clock.seconds() * 1e9 / rounds / values;
 }
 
-/// Processor time of all threads so far: unlike the clock on the wall, it does not count what others run.
-double processor_seconds() {
-  rusage usage{};
-  getrusage(RUSAGE_SELF, &usage);
-  return static_cast<double>(usage.ru_utime.tv_sec + usage.ru_stime.tv_sec) +
-         1e-6 * static_cast<double>(usage.ru_utime.tv_usec + usage.ru_stime.tv_usec);
-}
+struct Row {
+  double seconds = 0.0, gigabytes = 0.0;
+};
 
-double peak_gigabytes() {
-  rusage usage{};
-  getrusage(RUSAGE_SELF, &usage);
-  return static_cast<double>(usage.ru_maxrss) / 1048576.0;
-}
-
-/// A community without tables: building labels for 10^6 members is not what is measured.
-Study bare_study(int size, bool radio) {
-  drawn::Numbers numbers(7);
-  auto roster = std::make_shared<Roster>();
-  Community community;
-  community.size = size;
-  community.values.weight.assign(size, 1.0);
-  community.values.cost_shift.assign(size, 0.0);
-  for (auto* column : {&community.values.signal_precision, &community.values.stake_sd, &community.values.benefit,
-                       &community.values.cost, &community.values.turnout, &community.values.expected_share}) {
-    column->assign(size, std::numeric_limits<double>::quiet_NaN());
-  }
-  std::vector<std::vector<int>> hears(size);
-  for (const auto& [i, j] : studies::preferential(size, 3, numbers)) {
-    hears[i].push_back(j);
-    hears[j].push_back(i);
-  }
-  community.links.start.push_back(0);
-  roster->row_of.emplace_back();
-  for (int i = 0; i < size; ++i) {
-    std::sort(hears[i].begin(), hears[i].end());
-    community.links.speaker.insert(community.links.speaker.end(), hears[i].begin(), hears[i].end());
-    community.links.start.push_back(static_cast<std::int64_t>(community.links.speaker.size()));
-    roster->row_of[0].push_back(i);
-  }
-  community.links.relay_precision.assign(community.links.speaker.size(), std::numeric_limits<double>::infinity());
-  roster->community_of_row.assign(size, 0);
-  if (radio) {
-    Broadcast to_all{2.0, {}};
-    for (int i = 0; i < size; ++i) to_all.audience.push_back(i);
-    community.broadcasts.push_back(std::move(to_all));
-  }
-  Study study;
-  study.roster = roster;
-  study.communities.push_back(std::move(community));
-  return study;
-}
-
-void measure(int size, int threads, bool radio) {
-  const Study study = bare_study(size, radio);
+Row measure(int size, int threads, bool radio, double phi) {
+  const Study study = bench::bare_study(size, radio);
   const Beliefs beliefs = studies::beliefs(0.4, 1.0, 2.0, 0.1);
-  auto start = std::chrono::steady_clock::now();
-  const double before = processor_seconds();
+  const double before = bench::processor_seconds();
+  const bench::Clock clock;
   const Knowledge knowledge = make_knowledge(study, beliefs, 0);
-  std::optional<CurveGame> made = curve_game(knowledge, make_stakes(study, Payoff{}, 0), {threads, {}});
-  CurveGame& game = made.value();
-  const double prepared = seconds_since(start);
+  CurveGame game = curve_game(knowledge, make_stakes(study, Payoff{}, 0), {threads, {}}).value();
+  const double prepared = clock.seconds();
   const Enclosure found = enclose_large(game, SolveRule{}, {threads, {}});
-  const double total = seconds_since(start);
-  std::printf("%9d %8.2f %8.2f %8.2f %7lld %6zu %7.0f %7d %8.2f  %s\n", size, prepared, total,
-              processor_seconds() - before, static_cast<long long>(found.iterations), game.curve().nodes(),
-              game.curve().layers(), game.curve().direct_members(), peak_gigabytes(), verdict_text(found.verdict));
-  if (size > 2000 || radio) return;
-  start = std::chrono::steady_clock::now();
-  const SharedInformation shared(knowledge);
-  BestReply dense(knowledge, shared, make_stakes(study, Payoff{}, 0));
-  const Enclosure same = enclose(dense, SolveRule{}, StopFlag{});
-  std::printf("%9d dense form %8.2f s, %lld sweeps and leaps\n", size, seconds_since(start),
-              static_cast<long long>(same.iterations));
+  const double total = clock.seconds(), busy = bench::processor_seconds() - before;
+  const double needed = static_cast<double>(found.iterations) * game.evaluations() * phi * 1e-9;
+  std::printf("%9d %8.2f %8.2f %8.2f %7lld %6zu %7.0f %7d %8.2f %10.2f  %s\n", size, prepared, total, busy,
+              static_cast<long long>(found.iterations), game.curve().nodes(), game.curve().layers(),
+              game.curve().direct_members(), bench::peak_gigabytes(), busy / needed, verdict_text(found.verdict));
+  return {total, bench::peak_gigabytes()};
+}
+
+/// Many small communities side by side: how much of both cores they use.
+void measure_batch(int communities, int members) {
+  const Study one = bench::bare_study(members, false);
+  Study study = one;
+  auto roster = std::make_shared<Roster>(*one.roster);
+  roster->row_of.clear();
+  roster->community_of_row.clear();
+  study.communities.clear();
+  for (int c = 0; c < communities; ++c) {
+    study.communities.push_back(one.communities[0]);
+    roster->row_of.emplace_back();
+    for (int i = 0; i < members; ++i) {
+      roster->row_of[c].push_back(static_cast<std::int64_t>(roster->community_of_row.size()));
+      roster->community_of_row.push_back(c);
+    }
+  }
+  study.roster = roster;
+  const double before = bench::processor_seconds();
+  const bench::Clock clock;
+  const Solution solution =
+      solve(std::make_shared<const Study>(study), studies::beliefs(0.4, 1.0, 2.0, 0.1), Payoff{}, SolveRule{}, {2, {}});
+  const double total = clock.seconds(), busy = bench::processor_seconds() - before;
+  std::printf("batch of %d communities of %d: %.2f s, %.0f %% of two threads\n", communities, members, total,
+              50.0 * busy / total);
 }
 
 }  // namespace
@@ -101,15 +77,24 @@ int main(int argc, char** argv) {
   std::setvbuf(stdout, nullptr, _IOLBF, 0);
   const int largest = argc > 1 ? std::atoi(argv[1]) : 100000;
   const int threads = argc > 2 ? std::atoi(argv[2]) : 2;
+  const double phi = nanoseconds_of_phi();
   std::printf(
-      "  members  prepare    total      cpu  sweeps  nodes  layers  direct  peak GB  verdict    (seconds, %d "
-      "threads)\n",
-      threads);
+      "Phi over an array: %.2f ns; seconds on %d threads; cpu / needed: processor time to sweeps x evaluations x Phi\n",
+      phi, threads);
+  std::printf("  members  prepare    total      cpu  sweeps  nodes  layers  direct  peak GB cpu/needed  verdict\n");
+  Row last{};
   for (int size : {1000, 2000, 10000, 100000, 1000000}) {
-    if (size <= largest) measure(size, threads, false);
+    if (size > largest) continue;
+    const Row row = measure(size, threads, false, phi);
+    if (size > 10000) {
+      std::printf("          growth since the size before: time n^%.2f, memory n^%.2f\n",
+                  std::log10(row.seconds / last.seconds), std::log10(row.gigabytes / last.gigabytes));
+    }
+    last = row;
   }
   std::printf("with a broadcast heard by everybody (tau = 2)\n");
   for (int size : {2000, 10000, 100000}) {
-    if (size <= largest) measure(size, threads, true);
+    if (size <= largest) measure(size, threads, true, phi);
   }
+  measure_batch(5000, 100);
 }
