@@ -16,7 +16,8 @@
  *
  *     folkmote_table_create -> folkmote_table_add_* -> folkmote_study_create
  *     folkmote_beliefs_create -> folkmote_beliefs_set;  folkmote_payoff_create -> folkmote_payoff_set
- *     folkmote_equilibrium_create -> folkmote_equilibrium_table, folkmote_turnout, folkmote_simulate
+ *     folkmote_equilibrium_create -> folkmote_equilibrium_table, folkmote_turnout, folkmote_simulate,
+ *                                    folkmote_sensitivity
  *     folkmote_scenario_create -> folkmote_scenario_<edit> ... -> folkmote_counterfactual
  *
  * IN FULL.  Three members who listen to nobody; the expected turnout (status checks left out):
@@ -368,6 +369,50 @@ FOLKMOTE_API folkmote_status folkmote_turnout(const folkmote_equilibrium* equili
 FOLKMOTE_API folkmote_status folkmote_simulate(const folkmote_equilibrium* equilibrium, int64_t first_draw,
                                                int64_t draws, uint64_t seed, const double* given, int level,
                                                const folkmote_options* options, folkmote_table** table, char* message);
+
+/* ---- Sensitivity --------------------------------------------------------------------------------------- */
+
+/* What derivatives are taken in, beside FOLKMOTE_PRIOR_MEAN, FOLKMOTE_PRIOR_PRECISION, FOLKMOTE_SIGNAL_PRECISION,
+ * FOLKMOTE_RELAY_PRECISION, FOLKMOTE_STAKE_SD, FOLKMOTE_BENEFIT and FOLKMOTE_COST. */
+typedef enum folkmote_sensitive {
+  FOLKMOTE_BROADCAST_PRECISION = 24 /* of each broadcast of the study by itself; not settable */
+} folkmote_sensitive;
+
+/* Derivatives of the equilibrium at both ends, by the implicit function theorem: one row per community and parameter,
+ * and one per broadcast for its precision (`broadcast`: its number in the community, from 1, in the order in which it
+ * was added; missing in other rows). All values of the parameter in a community move alike, those of columns too;
+ * exact relays stay exact; who is in a member's reach stays.
+ * BY_COMMUNITY: community, parameter (its name), broadcast, turnout_least, turnout_greatest (of expected turnout),
+ * status_least, status_greatest.
+ * BY_MEMBER, the members of a community in the order of `members` for each parameter: community, member, parameter,
+ * broadcast, cutoff_least, cutoff_greatest, chance_least, chance_greatest (of the member's cutoff and chance when all
+ * move alike), turnout_own_least, turnout_own_greatest (of expected turnout when the member's own value alone moves;
+ * for the relay precision, that of all reports that it hears; NaN where members have no value of their own),
+ * status_least, status_greatest.
+ * A status is "solved", or says why there are only NaN at that end: "near a tangency" (two equilibria meet there or
+ * have just parted), "a gain jumps" (an index is certain, given another), "not converged", "too large" (above 2,000
+ * members).
+ *   parameters  `parameter_count` different numbers; with count 0 all of the above, and NULL is allowed
+ *   level       a folkmote_level
+ *   options     threads and progress; NULL: the defaults
+ *   table       out: in units of turnout (0..1), chance or cutoff per unit of the parameter; the caller destroys it.
+ *               NULL on failure. */
+FOLKMOTE_API folkmote_status folkmote_sensitivity(const folkmote_equilibrium* equilibrium, int64_t parameter_count,
+                                                  const int* parameters, int level, const folkmote_options* options,
+                                                  folkmote_table** table, char* message);
+
+/* The derivative of expected turnout in every candidate link: in the precision with which a listener hears a speaker's
+ * signal, at what it is now, 0 where it does not hear it. Everybody's reach stays as it is, and nobody forwards the
+ * report. One row per ordered pair of a community: community, listener, speaker, precision (that of the report now, at
+ * most the speaker's signal precision, which it has when exact), turnout_least, turnout_greatest, status_least,
+ * status_greatest (as above). 0 where the speaker has no signal to report. Rows are pairs of people: keep them private;
+ * they are no list of whom to press.
+ *   options  threads and progress; NULL: the defaults
+ *   table    out: the caller destroys it. NULL on failure.
+ * FOLKMOTE_BAD_ARGUMENT for a community above 2,000 members, or more than 5,000,000 pairs in all. */
+FOLKMOTE_API folkmote_status folkmote_link_sensitivity(const folkmote_equilibrium* equilibrium,
+                                                       const folkmote_options* options, folkmote_table** table,
+                                                       char* message);
 
 /* ---- Scenarios and counterfactuals --------------------------------------------------------------------- */
 

@@ -10,13 +10,15 @@ namespace {
 
 constexpr double exact = std::numeric_limits<double>::infinity();
 
+double relay_variance(double relay_precision) { return std::isinf(relay_precision) ? 0.0 : 1.0 / relay_precision; }
+
 }  // namespace
 
 HeardSet::HeardSet(const Community& community, std::vector<double> relay_of_listener)
     : community_(community),
       relay_of_listener_(std::move(relay_of_listener)),
       gatherings_of_(community.size),
-      path_(community.hops > 1 ? community.size : 0, Path{0.0, 0.0, 0}) {
+      path_(community.hops > 1 ? community.size : 0, Path{0.0, 0.0, 0, 0.0}) {
   for (std::size_t g = 0; g < community.gatherings.size(); ++g) {
     for (int member : community.gatherings[g].members) gatherings_of_[member].push_back(static_cast<int>(g));
   }
@@ -58,24 +60,26 @@ void HeardSet::forward(int member) {
   hear_directly(member, next_);
   reached_.clear();
   for (const Heard& h : next_) {
-    path_[h.speaker] = {std::isinf(h.relay_precision) ? 0.0 : 1.0 / h.relay_precision, h.relay_precision, 1};
+    const double variance = relay_variance(h.relay_precision);
+    path_[h.speaker] = {variance, h.relay_precision, 1, variance * variance};
     reached_.push_back(h.speaker);
   }
-  std::vector<std::pair<int, double>> improved;
-  for (const Heard& h : next_) improved.emplace_back(h.speaker, path_[h.speaker].variance);
+  std::vector<std::pair<int, Path>> improved;
+  for (const Heard& h : next_) improved.emplace_back(h.speaker, path_[h.speaker]);
   for (int hop = 2; hop <= community_.hops && !improved.empty(); ++hop) {
-    const std::vector<std::pair<int, double>> relays = std::move(improved);
+    const std::vector<std::pair<int, Path>> relays = std::move(improved);
     improved.clear();
-    for (const auto& [relay, variance] : relays) {
+    for (const auto& [relay, way] : relays) {
       hear_directly(relay, next_);
       for (const Heard& h : next_) {
         if (h.speaker == member) continue;
-        const double longer = variance + (std::isinf(h.relay_precision) ? 0.0 : 1.0 / h.relay_precision);
+        const double added = relay_variance(h.relay_precision);
+        const double longer = way.variance + added;
         Path& path = path_[h.speaker];
         if (path.hops != 0 && path.variance <= longer) continue;
         if (path.hops == 0) reached_.push_back(h.speaker);
-        path = {longer, exact, hop};
-        improved.emplace_back(h.speaker, longer);
+        path = {longer, exact, hop, way.squares + added * added};
+        improved.emplace_back(h.speaker, path);
       }
     }
   }
@@ -84,7 +88,8 @@ void HeardSet::forward(int member) {
   for (int speaker : reached_) {
     Path& path = path_[speaker];
     const double several = path.variance > 0.0 ? 1.0 / path.variance : exact;
-    heard_.push_back({speaker, path.hops == 1 ? path.relay_precision : several});
+    const double slope = path.variance > 0.0 ? path.squares / path.variance / path.variance : 1.0;
+    heard_.push_back({speaker, path.hops == 1 ? path.relay_precision : several, slope});
     path.hops = 0;
   }
 }

@@ -12,7 +12,8 @@ namespace folkmote {
 
 struct Heard {
   int speaker;
-  double relay_precision;  // infinite: exact
+  double relay_precision;    // infinite: exact
+  double relay_slope = 1.0;  // d(relay_precision) when all relays on the way gain the same; no matter where exact
 };
 
 /// Answers one member at a time, so that a gathering of k is never stored as k^2 links.
@@ -33,6 +34,7 @@ class HeardSet {
     double variance;         // sum of 1 / gamma along it
     double relay_precision;  // of its only link, kept so that one hop changes no bit
     int hops;                // 0: not reached
+    double squares;          // sum of 1 / gamma^2 along it
   };
 
   const Community& community_;

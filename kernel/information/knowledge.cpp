@@ -34,6 +34,7 @@ void add_reports(Knowledge& knowledge, const Study& study, const Beliefs& belief
     for (const Heard& h : heard.of(i)) {
       knowledge.speaker.push_back(h.speaker);
       knowledge.relay_precision.push_back(h.relay_precision);
+      knowledge.relay_slope.push_back(h.relay_slope);
       knowledge.report_precision.push_back(report_precision(knowledge.signal_precision[h.speaker], h.relay_precision));
     }
     knowledge.start.push_back(static_cast<std::int64_t>(knowledge.speaker.size()));

@@ -36,6 +36,7 @@ struct Knowledge {
   std::vector<std::int64_t> start;
   std::vector<int> speaker;              // j, increasing within a listener
   std::vector<double> relay_precision;   // gamma_ij; infinite: exact
+  std::vector<double> relay_slope;       // dgamma_ij when all relays gain the same: 1 but for forwarded reports
   std::vector<double> report_precision;  // beta_ij = beta_j gamma_ij / (beta_j + gamma_ij)
 
   std::vector<Broadcast> broadcasts;  // tau_q and S_q

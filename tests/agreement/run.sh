@@ -52,6 +52,15 @@ shows_picture() { grep -q '<svg' "$work/julia.txt"; }
 says_the_same() { diff <(grep '^  [a-z]' "$work/c.txt" | head -n 7) <(grep '^  [a-z]' "$1" | head -n 7); }
 refuses() { ! "$work/holdout" "$work" "$work/none.csv" 2>"$work/refusal" && grep -q 'members.csv cannot be read' "$work/refusal"; }
 
+# Digests of the derivatives by community, by member and by link, one a line.
+derivatives_c() { "$work/derivatives" "$data" "$1" >"$work/derivatives$1.txt" && [ "$(wc -l <"$work/derivatives$1.txt")" = 3 ]; }
+derivatives_agree() { [ -s "$work/derivatives2.txt" ] && "$@" >"$work/others.txt" && diff "$work/derivatives2.txt" "$work/others.txt"; }
+derivatives_r() { R_LIBS="$r_library" Rscript --vanilla "$root/tests/agreement/derivatives.R" "$data"; }
+derivatives_julia() {
+  FOLKMOTE_LIBRARY="$build/libfolkmote.so" "$root/.ci/julia.sh" --startup-file=no --project="$root/wrappers_julia" \
+    "$root/tests/agreement/derivatives.jl" "$data"
+}
+
 mkdir -p "$build/holdout"
 check "holdout.c compiles as plain C11 without a warning" compile "$build/holdout/holdout" "$root/examples/holdout/holdout.c"
 check "first_steps.c compiles" compile "$work/first_steps" "$root/examples/first_steps.c"
@@ -81,6 +90,12 @@ check "one thread gives the same bytes in R" in_r_threads 1
 
 check "plays by community in parts equal the whole" same_in_parts 1 41 13
 check "plays by member in parts equal the whole" same_in_parts 2 5 2
+check "derivatives.c compiles" compile "$work/derivatives" "$root/tests/agreement/derivatives.c"
+check "derivatives in C with two threads" derivatives_c 2
+check "one thread gives the same derivatives" derivatives_c 1
+check "byte for byte" cmp "$work/derivatives2.txt" "$work/derivatives1.txt"
+check "R gives the same derivatives" derivatives_agree derivatives_r
+check "Julia gives the same derivatives" derivatives_agree derivatives_julia
 check "make_data.R makes the committed data again" same_data
 check "a missing table is refused by name" refuses
 

@@ -285,6 +285,11 @@ static void test_null_results(const folkmote_study* study, const folkmote_equili
   REFUSED(folkmote_turnout(e, 1, values, 1, values, NULL, NULL, message));
   REFUSED(folkmote_simulate(NULL, 0, 1, 1, NULL, FOLKMOTE_BY_MEMBER, NULL, &table, message));
   REFUSED(folkmote_simulate(e, 0, 1, 1, NULL, FOLKMOTE_BY_MEMBER, NULL, NULL, message));
+  REFUSED(folkmote_sensitivity(NULL, 0, NULL, FOLKMOTE_BY_MEMBER, NULL, &table, message));
+  REFUSED(folkmote_sensitivity(e, 1, NULL, FOLKMOTE_BY_MEMBER, NULL, &table, message));
+  REFUSED(folkmote_sensitivity(e, 0, NULL, FOLKMOTE_BY_MEMBER, NULL, NULL, message));
+  REFUSED(folkmote_link_sensitivity(NULL, NULL, &table, message));
+  REFUSED(folkmote_link_sensitivity(e, NULL, NULL, message));
   REFUSED(folkmote_counterfactual(NULL, s, 0, 1, NULL, &table, message));
   REFUSED(folkmote_counterfactual(e, NULL, 0, 1, NULL, &table, message));
   REFUSED(folkmote_counterfactual(e, s, 0, 1, NULL, NULL, message));

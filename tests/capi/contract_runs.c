@@ -26,7 +26,7 @@ static uint64_t results_digest(int threads) {
   folkmote_equilibrium* equilibrium = NULL;
   folkmote_scenario* scenario = NULL;
   const double given[2] = {0.1, 0.6}, at_least[2] = {0.25, 0.75};
-  folkmote_table* tables[5] = {NULL};
+  folkmote_table* tables[7] = {NULL};
   folkmote_scenario_create(study, &scenario, NULL);
   folkmote_scenario_thin_links(scenario, 0.5, 3, NULL);
   CHECK_STATUS(folkmote_equilibrium_create(study, beliefs, payoff, options, &equilibrium, message), FOLKMOTE_OK,
@@ -36,8 +36,10 @@ static uint64_t results_digest(int threads) {
   folkmote_simulate(equilibrium, 0, 20, 1, NULL, FOLKMOTE_BY_COMMUNITY, options, &tables[2], NULL);
   folkmote_simulate(equilibrium, 0, 20, 1, given, FOLKMOTE_BY_MEMBER, options, &tables[3], NULL);
   folkmote_counterfactual(equilibrium, scenario, 20, 1, options, &tables[4], NULL);
+  folkmote_sensitivity(equilibrium, 0, NULL, FOLKMOTE_BY_MEMBER, options, &tables[5], NULL);
+  folkmote_link_sensitivity(equilibrium, options, &tables[6], NULL);
   uint64_t digest = folkmote_equilibrium_digest(equilibrium);
-  for (int t = 0; t < 5; ++t) {
+  for (int t = 0; t < 7; ++t) {
     CHECK(tables[t] != NULL);
     digest = digest * UINT64_C(0x9e3779b97f4a7c15) + folkmote_table_digest(tables[t]);
     folkmote_table_destroy(tables[t]);
@@ -93,7 +95,16 @@ static int watch_progress(int64_t done, int64_t total, void* user) {
   return watch->cancel_at > 0 && watch->calls >= watch->cancel_at;
 }
 
-enum run { run_equilibrium, run_turnout, run_simulate, run_actions, run_counterfactual, run_count };
+enum run {
+  run_equilibrium,
+  run_turnout,
+  run_simulate,
+  run_actions,
+  run_sensitivity,
+  run_links,
+  run_counterfactual,
+  run_count
+};
 
 static folkmote_status start_equilibrium(const folkmote_study* study, const folkmote_options* options,
                                          const void** made) {
@@ -112,6 +123,8 @@ static folkmote_status start_table(enum run run, const folkmote_study* study, co
                                    const folkmote_options* options, int64_t draws, folkmote_table** table) {
   const int level = run == run_actions ? FOLKMOTE_BY_MEMBER : FOLKMOTE_BY_COMMUNITY;
   if (run == run_turnout) return folkmote_turnout(equilibrium, 0, NULL, 0, NULL, options, table, message);
+  if (run == run_sensitivity) return folkmote_sensitivity(equilibrium, 0, NULL, level, options, table, message);
+  if (run == run_links) return folkmote_link_sensitivity(equilibrium, options, table, message);
   if (run != run_counterfactual)
     return folkmote_simulate(equilibrium, 0, draws, 1, NULL, level, options, table, message);
   folkmote_scenario* scenario = NULL;
@@ -292,6 +305,38 @@ static void test_result_arguments(void) {
   folkmote_study_destroy(study);
 }
 
+static void test_sensitivity_arguments(void) {
+  folkmote_study* study = sound_study();
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_table* table = NULL;
+  const int unknown[] = {0, -1, 6, FOLKMOTE_REACH, 25, 1 << 30}, twice[] = {FOLKMOTE_COST, FOLKMOTE_COST};
+  for (size_t k = 0; k < sizeof unknown / sizeof *unknown; ++k) {
+    REFUSED(folkmote_sensitivity(e, 1, &unknown[k], FOLKMOTE_BY_COMMUNITY, NULL, &table, message));
+    CHECK_SAYS(message, "parameter number");
+  }
+  REFUSED(folkmote_sensitivity(e, 2, twice, FOLKMOTE_BY_COMMUNITY, NULL, &table, message));
+  CHECK_SAYS(message, "cost is asked for twice");
+  REFUSED(folkmote_sensitivity(e, -1, twice, FOLKMOTE_BY_COMMUNITY, NULL, &table, message));
+  REFUSED(folkmote_sensitivity(e, 0, NULL, 3, NULL, &table, message));
+  CHECK(table == NULL);
+  /* The order asked for is the order given. */
+  const int asked[] = {FOLKMOTE_COST, FOLKMOTE_PRIOR_MEAN};
+  CHECK_STATUS(folkmote_sensitivity(e, 2, asked, FOLKMOTE_BY_COMMUNITY, NULL, &table, message), FOLKMOTE_OK, message);
+  CHECK(folkmote_table_rows(table) == 4);
+  CHECK(strcmp(text_at(table, "parameter", 0), "cost") == 0);
+  CHECK(strcmp(text_at(table, "parameter", 3), "prior_mean") == 0);
+  CHECK(integer_at(table, "broadcast", 0) == INT64_MIN);
+  CHECK(strcmp(text_at(table, "status_greatest", 2), "solved") == 0);
+  CHECK(real_at(table, "turnout_greatest", 0) < 0); /* a cost deters */
+  folkmote_table_destroy(table);
+  /* Five members, three and two: 3 * 2 + 2 * 1 ordered pairs. */
+  CHECK_STATUS(folkmote_link_sensitivity(e, NULL, &table, message), FOLKMOTE_OK, message);
+  CHECK(folkmote_table_rows(table) == 8);
+  folkmote_table_destroy(table);
+  folkmote_equilibrium_destroy(e);
+  folkmote_study_destroy(study);
+}
+
 static void test_scenario_arguments(void) {
   folkmote_study *study = sound_study(), *other = ring_study(2, 3);
   folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
@@ -337,6 +382,7 @@ void test_runs(void) {
   test_shards();
   test_inputs_may_go();
   test_result_arguments();
+  test_sensitivity_arguments();
   test_scenario_arguments();
   CHECK_HEALTHY(0);
 }

@@ -254,6 +254,19 @@ static folkmote_status call_actions(void) {
   return keep(status, table);
 }
 
+static folkmote_status call_sensitivity(void) {
+  folkmote_table* table = NULL;
+  const folkmote_status status =
+      folkmote_sensitivity(equilibrium, 0, NULL, FOLKMOTE_BY_MEMBER, options, &table, message);
+  return keep(status, table);
+}
+
+static folkmote_status call_links(void) {
+  folkmote_table* table = NULL;
+  const folkmote_status status = folkmote_link_sensitivity(equilibrium, options, &table, message);
+  return keep(status, table);
+}
+
 static folkmote_status call_counterfactual(void) {
   folkmote_table* table = NULL;
   const folkmote_status status = folkmote_counterfactual(equilibrium, scenario, 3, 1, options, &table, message);
@@ -326,6 +339,8 @@ static const struct {
              {"turnout", call_turnout},
              {"plays", call_plays},
              {"actions", call_actions},
+             {"sensitivity", call_sensitivity},
+             {"links", call_links},
              {"edits", call_edits},
              {"counterfactual", call_counterfactual},
              {"digests", call_digests}};

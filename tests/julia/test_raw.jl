@@ -10,7 +10,8 @@ function julia_type(c)
                  "void" => Cvoid, "folkmote_status" => Cint, "char*" => Ptr{UInt8}, "const char*" => Cstring,
                  "const char*const*" => Ptr{Ptr{UInt8}}, "const char**" => Ptr{Ptr{UInt8}}, "void*" => Ptr{Cvoid},
                  "folkmote_progress" => Ptr{Cvoid}, "double*" => Ptr{Float64}, "const double*" => Ptr{Float64},
-                 "int64_t*" => Ptr{Int64}, "const int64_t*" => Ptr{Int64}, "int*" => Ptr{Cint})
+                 "int64_t*" => Ptr{Int64}, "const int64_t*" => Ptr{Int64}, "int*" => Ptr{Cint},
+                 "const int*" => Ptr{Cint})
     haskey(plain, c) && return plain[c]
     handle = match(r"^(?:const )?(folkmote_\w+?)(\*+)$", c)
     type = Ptr{getfield(Raw, Symbol(handle[1]))}

@@ -34,7 +34,7 @@ module Folkmote
 import Dates, Libdl, Logging, Random
 using Printf: @sprintf
 
-export study, beliefs, share_payoff, equilibrium, turnout, simulate, counterfactual
+export study, beliefs, share_payoff, equilibrium, turnout, simulate, sensitivity, counterfactual
 export scenario, add_links, cut_links, thin_links, gathering, shift_cost, set_beliefs, forward_reports
 export columns, provenance, FolkmoteError
 
@@ -52,6 +52,7 @@ include("study.jl")
 include("parameters.jl")
 include("equilibrium.jl")
 include("turnout.jl")
+include("sensitivity.jl")
 include("edits.jl")
 include("scenario.jl")
 include("counterfactual.jl")

@@ -158,11 +158,12 @@ as_id(::Type{Char}, label) = only(string(label))
 as_id(::Type{T}, label) where {T} = isconcretetype(T) ? convert(T, string(label)) : string(label)
 
 "Columns whose text is one of a few words come back as symbols."
-is_category(name) = name in (:scope, :chance_method) || endswith(String(name), "verdict")
+is_category(name) = name in (:scope, :chance_method, :parameter, :status_least, :status_greatest) ||
+                    endswith(String(name), "verdict")
 
 function as_asked(name, values, ids)
     name === :community && return as_ids(ids.community, values)
-    name === :member && return as_ids(ids.member, values)
+    name in (:member, :listener, :speaker) && return as_ids(ids.member, values)
     is_category(name) && return Symbol.(values)
     return values
 end

@@ -152,6 +152,15 @@ const FOLKMOTE_BY_MEMBER = 2
                             options::Ptr{folkmote_options}, table::Ptr{Ptr{folkmote_table}},
                             message::Message)::Status
 
+# ---- Sensitivity
+const FOLKMOTE_BROADCAST_PRECISION = 24
+
+@exported folkmote_sensitivity(equilibrium::Ptr{folkmote_equilibrium}, parameter_count::Int64,
+                               parameters::Ptr{Cint}, level::Cint, options::Ptr{folkmote_options},
+                               table::Ptr{Ptr{folkmote_table}}, message::Message)::Status
+@exported folkmote_link_sensitivity(equilibrium::Ptr{folkmote_equilibrium}, options::Ptr{folkmote_options},
+                                    table::Ptr{Ptr{folkmote_table}}, message::Message)::Status
+
 # ---- Scenarios and counterfactuals
 @exported folkmote_scenario_create(study::Ptr{folkmote_study}, scenario::Ptr{Ptr{folkmote_scenario}},
                                    message::Message)::Status

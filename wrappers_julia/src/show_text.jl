@@ -91,6 +91,30 @@ function turnout_row(table, cells, keys, k)
                 between("turnout"), between("sd"), chance)
 end
 
+function page(found::Sensitivity, most)
+    table, cells = table_of(found), getfield(found, :cells)
+    stems = filter(stem -> haskey(table, Symbol(stem, "_least")), (:cutoff, :chance, :turnout, :turnout_own, :status))
+    keys_shown = filter(name -> haskey(table, name), (:member, :listener, :speaker, :parameter, :broadcast, :precision))
+    rows = [sensitivity_row(table, cells, keys_shown, stems, k) for k in shown_rows(table, most)]
+    names = vcat("community", [replace(string(name), '_' => ' ') for name in (keys_shown..., stems...)])
+    heading = "Derivatives at $(communities_text(length(cells))): " * verdict_line([cell.verdict for cell in values(cells)])
+    by_people = haskey(table, :member) || haskey(table, :listener)
+    notes = by_people ? ["rows describe people: keep them private; they are no list of whom to press"] :
+            small_note(values(cells))
+    return Page(heading, names, rows, notes, length(table.community))
+end
+
+function sensitivity_row(table, cells, keys, stems, k)
+    cell = cells[table.community[k]]
+    ends(stem) = (table[Symbol(stem, "_least")][k], table[Symbol(stem, "_greatest")][k])
+    text(stem) = stem === :status ? interval_text(ends(stem)..., BRACKETED, string) :
+                 interval_text(ends(stem)..., cell.verdict, derivative_text)
+    return vcat(starred(table.community[k], cell), [key_text(table[key][k]) for key in keys], [text(stem) for stem in stems])
+end
+
+derivative_text(value) = isnan(value) ? "-" : @sprintf("%+.3g", value)
+key_text(value) = value === missing ? "" : value isa AbstractFloat ? @sprintf("%.3g", value) : string(value)
+
 function page(plays::Simulation, most)
     table, cells = table_of(plays), getfield(plays, :cells)
     by_member = haskey(table, :member)

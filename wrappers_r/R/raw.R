@@ -53,6 +53,11 @@ raw_simulate <- function(equilibrium, first, draws, seed, given, level, options)
   checked(.Call(C_simulate, equilibrium, as.double(first), as.double(draws), as.double(seed), given, level, options))
 }
 
+raw_sensitivity <- function(equilibrium, parameters, level, options) {
+  checked(.Call(C_sensitivity, equilibrium, parameters, level, options))
+}
+raw_link_sensitivity <- function(equilibrium, options) checked(.Call(C_link_sensitivity, equilibrium, options))
+
 raw_scenario_create <- function(study) checked(.Call(C_scenario_create, study))
 raw_scenario_add_links <- function(scenario, links, mutual) {
   checked(.Call(C_scenario_add_links, scenario, links, as.integer(mutual)))

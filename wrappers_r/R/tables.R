@@ -89,8 +89,8 @@ from_table <- function(table, members) {
   columns <- seq_len(raw_table_columns(table)) - 1L
   values <- lapply(columns, get_column, table = table)
   names(values) <- vapply(columns, raw_table_column_name, "", table = table)
-  for (id in intersect(c("community", "member"), names(values))) {
-    values[[id]] <- restore_id(values[[id]], members[[id]])
+  for (id in intersect(c("community", "member", "listener", "speaker"), names(values))) {
+    values[[id]] <- restore_id(values[[id]], members[[if (id == "community") "community" else "member"]])
   }
   frame <- structure(values, class = "data.frame", row.names = .set_row_names(raw_table_rows(table)))
   attr(frame, "digest") <- raw_table_digest(table)

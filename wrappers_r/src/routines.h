@@ -45,6 +45,9 @@ SEXP fm_equilibrium_digest(SEXP equilibrium);
 SEXP fm_turnout(SEXP equilibrium, SEXP given, SEXP at_least, SEXP options);
 SEXP fm_simulate(SEXP equilibrium, SEXP first, SEXP draws, SEXP seed, SEXP given, SEXP level, SEXP options);
 
+SEXP fm_sensitivity(SEXP equilibrium, SEXP parameters, SEXP level, SEXP options);
+SEXP fm_link_sensitivity(SEXP equilibrium, SEXP options);
+
 SEXP fm_scenario_create(SEXP study);
 SEXP fm_scenario_add_links(SEXP scenario, SEXP links, SEXP mutual);
 SEXP fm_scenario_cut_links(SEXP scenario, SEXP links, SEXP mutual);
