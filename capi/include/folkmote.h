@@ -325,7 +325,8 @@ FOLKMOTE_API void folkmote_equilibrium_destroy(folkmote_equilibrium* equilibrium
 
 /* BY_COMMUNITY: community, verdict, contraction_bound, turnout_least, turnout_greatest, width, iterations.
  * BY_MEMBER, in the order of `members`: community, member, cutoff_least, cutoff_greatest, chance_least,
- * chance_greatest (chance of acting before anything is known).
+ * chance_greatest (chance of acting before anything is known), information_held (K, the precision of all that the
+ * member holds beside the prior).
  * Verdicts: "proved unique" (contraction_bound < 1), "bracketed" (both ends agree within the tolerance, not
  * proved), "several" (the ends are proved to differ), "not converged" (width tells the enclosure reached).
  * `contraction_bound`, rounded outward: max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)); where that is 1 or more

@@ -53,6 +53,7 @@ Table member_table(const Solution& solution) {
   const Roster& roster = *study.roster;
   const std::size_t rows = roster.members();
   std::vector<double> cutoff_least(rows), cutoff_greatest(rows), chance_least(rows), chance_greatest(rows);
+  std::vector<double> information_held(rows);
   for (std::size_t c = 0; c < study.communities.size(); ++c) {
     const Enclosure& found = solution.enclosures[c];
     const Knowledge knowledge = make_knowledge(study, solution.beliefs, static_cast<int>(c));
@@ -64,6 +65,7 @@ Table member_table(const Solution& solution) {
       cutoff_greatest[row] = found.greatest[i];
       chance_least[row] = least[i];
       chance_greatest[row] = greatest[i];
+      information_held[row] = knowledge.held[i];
     }
   }
   const std::vector<std::int64_t> community(roster.community_of_row.begin(), roster.community_of_row.end());
@@ -74,6 +76,7 @@ Table member_table(const Solution& solution) {
   table.add("cutoff_greatest", std::move(cutoff_greatest));
   table.add("chance_least", std::move(chance_least));
   table.add("chance_greatest", std::move(chance_greatest));
+  table.add("information_held", std::move(information_held));
   return table;
 }
 

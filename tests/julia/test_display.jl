@@ -39,6 +39,10 @@ for x in (eq, multiple, starved, many, curve, cf)
     @test startswith(picture, "<svg") && endswith(picture, "</svg>\n") && !occursin("NaN", picture)
     @test occursin("<svg", shown("text/html", x)) && occursin("<table>", shown("text/html", x))
 end
+for x in (eq, multiple, starved)
+    picture = shown("image/svg+xml", cutoff_picture(x))
+    @test startswith(picture, "<svg") && endswith(picture, "</svg>\n") && !occursin("NaN", picture)
+end
 @test !showable(MIME("image/svg+xml"), turnout(eq)) && occursin("<table>", shown("text/html", turnout(eq)))
 @test refused(() -> shown("image/svg+xml", turnout(eq)), :FOLKMOTE_BAD_ARGUMENT, "given")
 @test occursin("&lt;b&gt;", shown("image/svg+xml", equilibrium(study((community = ["<b>", "<b>"], member = [1, 2])), some_beliefs())))

@@ -42,7 +42,7 @@ eq = equilibrium(st, some_beliefs())
 @test propertynames(eq) ==
       (:community, :verdict, :contraction_bound, :turnout_least, :turnout_greatest, :width, :iterations)
 @test keys(columns(eq; level = :member)) ==
-      (:community, :member, :cutoff_least, :cutoff_greatest, :chance_least, :chance_greatest)
+      (:community, :member, :cutoff_least, :cutoff_greatest, :chance_least, :chance_greatest, :information_held)
 @test provenance(eq).inputs != provenance(equilibrium(st, some_beliefs(stake_sd = 0.3))).inputs
 @test refused(() -> columns(eq; level = :village), :FOLKMOTE_BAD_ARGUMENT, ":village")
 

@@ -64,6 +64,15 @@ test_that("rows of small communities are flagged", {
   expect_false(any(grepl("fewer than 10 members", capture.output(print(solve_several(several_study(3)))))))
 })
 
+test_that("cutoffs are drawn against the information held, whatever the verdicts", {
+  for (eq in list(good_equilibrium(), solve_several(several_study(3)), solve_several(several_study(3), sweeps = 3))) {
+    held <- as.data.frame(eq, level = "member")$information_held
+    expect_true(all(is.finite(held) & held >= 0))
+    picture(eq, what = "cutoffs")
+  }
+  expect_error(plot(good_equilibrium(), what = "people"), "'what'")
+})
+
 test_that("single members are shown on the explicit switch only", {
   eq <- good_equilibrium()
   expect_false("member" %in% names(as.data.frame(eq)))

@@ -36,7 +36,7 @@ using Printf: @sprintf
 
 export study, beliefs, share_payoff, equilibrium, turnout, simulate, sensitivity, counterfactual
 export scenario, add_links, cut_links, thin_links, gathering, shift_cost, set_beliefs, forward_reports
-export columns, provenance, FolkmoteError
+export columns, provenance, cutoff_picture, FolkmoteError
 
 include("errors.jl")
 include("raw.jl")
@@ -62,6 +62,7 @@ include("svg.jl")
 include("picture_rows.jl")
 include("picture_equilibrium.jl")
 include("picture_curve.jl")
+include("picture_cutoffs.jl")
 include("picture_counterfactual.jl")
 include("show_rich.jl")
 

@@ -40,7 +40,7 @@ table to every table package, so that `DataFrame(columns(result))` works. Ids ha
 the input, verdicts are symbols, shares and chances lie in 0..1.
 
 For an equilibrium `level = :member` gives one row per member, in the order of `members`: `community`,
-`member`, `cutoff_least`, `cutoff_greatest` (in units of the obstacle), `chance_least`,
+`member`, `cutoff_least`, `cutoff_greatest` (in units of the obstacle), `information_held`, `chance_least`,
 `chance_greatest`. Member rows describe people: keep them private.
 
 # Example

@@ -51,9 +51,14 @@ draw_listening <- function(chart, lanes, table, observed) {
   }
 }
 
-plot.folkmote_equilibrium <- function(x, sort = TRUE, ...) {
+plot.folkmote_equilibrium <- function(x, sort = TRUE, what = "turnout", ...) {
+  what <- one_choice(what, "what", c("turnout", "cutoffs"))
   old <- keep_par()
   on.exit(graphics::par(old))
+  if (what == "cutoffs") {
+    plot_cutoffs(as.data.frame(x, level = "member"), verdicts_of(x))
+    return(invisible())
+  }
   table <- x$communities
   if (one_flag(sort, "sort")) table <- table[order(-table$turnout_greatest, -table$turnout_least), ]
   lane <- list(from = 0, to = 1, range = c(0, 1), title = "Expected share of members who act", percent = TRUE)
