@@ -90,11 +90,7 @@ CurveGame::CurveGame(const Knowledge& knowledge, Stakes stakes, const Execution&
   }
   if (!serves()) return;
   error_.resize(size());
-  constexpr int members = 4096;  // of one task
-  run_tasks((size() + members - 1) / members, execution, [&](std::int64_t task, const StopFlag&) {
-    const int first = static_cast<int>(task) * members;
-    for (int i = first; i < std::min(size(), first + members); ++i) error_[i] = error_bound(i);
-  });
+  for_members(execution, [&](int i) { error_[i] = error_bound(i); });
 }
 
 void CurveGame::set(std::span<const double> cutoffs, BestReply::Limit at_jump, const Execution& execution) {
@@ -174,11 +170,14 @@ double CurveGame::error_bound(int member) const {
   const double size = std::fabs(prior_mean_) + std::max(std::fabs(largest_), std::fabs(prior_mean_));
   const auto of_term = [&](double sd) { return sd > 0.0 ? std::min(1.0, unit * (in_value + 2.0 * size / sd)) : 0.0; };
   const Overlap::Row row = overlap_.row(member);
+  const ThetaLaws& laws = curve_.laws();
   double all = 0.0, heard = 0.0, weight_of_all = 0.0;
   for (std::size_t k = 0; k < row.member.size(); ++k) {
     const Partner& j = partners_[Overlap::partner(row.member[k])];
     const double exact = j.weight * of_term(row.sd[k]);
-    all += exact + j.weight * of_term(std::sqrt(curve_.laws().variance(member, Overlap::partner(row.member[k]))));
+    const double apart = laws.common ? laws.variance(member, Overlap::partner(row.member[k]))
+                                     : j.spread + j.pull * j.pull * laws.doubt[member];
+    all += exact + j.weight * of_term(std::sqrt(apart));
     weight_of_all += j.weight;
     if (Overlap::heard(row.member[k])) heard += exact;
   }
@@ -189,28 +188,30 @@ double CurveGame::error_bound(int member) const {
   return 1.01 * (stakes_.benefit[member] * error + 4.0 * unit * size);
 }
 
-double CurveGame::contraction_bound() const {
+double CurveGame::contraction_bound(const Execution& execution) const {
   const IndependentBound independent(curve_.laws(), stakes_.weight);
-  double bound = 0.0;
-  for (int i = 0; i < size(); ++i) {
-    if (stakes_.benefit[i] == 0.0) continue;
-    const Overlap::Row row = overlap_.row(i);
-    double heard = 0.0, others = stakes_.mix < 1.0 ? independent.sum(i) : 0.0;
-    if (stakes_.mix < 1.0) others -= stakes_.weight[i] * independent.term(i, i);
-    for (std::size_t k = 0; k < row.member.size(); ++k) {
-      const int j = Overlap::partner(row.member[k]);
-      const double exact = row.sd[k] > 0.0 ? row.one_less_rho[k] / row.sd[k] : infinity;
-      if (Overlap::heard(row.member[k])) heard += stakes_.weight[j] * exact;
-      if (stakes_.mix < 1.0) others += stakes_.weight[j] * (exact - independent.term(i, j));
-    }
-    double sum = 0.0;
-    if (stakes_.mix < 1.0 && size() > 1) sum += (1.0 - stakes_.mix) * others / (curve_.total() - stakes_.weight[i]);
-    if (stakes_.mix > 0.0 && heard_weight_[i] > 0.0) sum += stakes_.mix * heard / heard_weight_[i];
-    // A difference of infinities says nothing: no proof.
-    bound = std::max(bound, std::isnan(sum) ? infinity : stakes_.benefit[i] * sum * inverse_sqrt_two_pi);
-  }
+  std::vector<double> bounds(size());
+  for_members(execution, [&](int i) { bounds[i] = contraction_of(i, independent); });
   // Sums of up to 10^6 terms in a few lanes, and terms of a relative error of a few roundings.
-  return bound * (1.0 + 1e-9);
+  return *std::max_element(bounds.begin(), bounds.end()) * (1.0 + 1e-9);
+}
+
+double CurveGame::contraction_of(int i, const IndependentBound& independent) const {
+  if (stakes_.benefit[i] == 0.0) return 0.0;
+  const Overlap::Row row = overlap_.row(i);
+  double heard = 0.0, others = stakes_.mix < 1.0 ? independent.sum(i) : 0.0;
+  if (stakes_.mix < 1.0) others -= partners_[i].weight * independent.term(i, partners_[i].pull, partners_[i].spread);
+  for (std::size_t k = 0; k < row.member.size(); ++k) {
+    const Partner& j = partners_[Overlap::partner(row.member[k])];
+    const double exact = row.sd[k] > 0.0 ? row.one_less_rho[k] / row.sd[k] : infinity;
+    if (Overlap::heard(row.member[k])) heard += j.weight * exact;
+    if (stakes_.mix < 1.0) others += j.weight * (exact - independent.term(i, j.pull, j.spread));
+  }
+  double sum = 0.0;
+  if (stakes_.mix < 1.0 && size() > 1) sum += (1.0 - stakes_.mix) * others / (curve_.total() - stakes_.weight[i]);
+  if (stakes_.mix > 0.0 && heard_weight_[i] > 0.0) sum += stakes_.mix * heard / heard_weight_[i];
+  // A difference of infinities says nothing: no proof.
+  return std::isnan(sum) ? infinity : stakes_.benefit[i] * sum * inverse_sqrt_two_pi;
 }
 
 }  // namespace folkmote

@@ -3,6 +3,7 @@
 // section 4). The same F_i(t; kappa) as BestReply at a cost of nodes and overlapping pairs, never of n^2.
 #include "numerics/strict.hpp"
 
+#include <algorithm>
 #include <cmath>
 #include <optional>
 #include <span>
@@ -13,6 +14,8 @@
 #include "payoff/payoff.hpp"
 
 namespace folkmote {
+
+class IndependentBound;
 
 class CurveGame {
  public:
@@ -41,7 +44,7 @@ class CurveGame {
   double error(int member) const { return error_[member]; }
 
   /// max_i b_i sum_j w_ij (1 - rho_ij) / (s_ij sqrt(2 pi)), never smaller than that.
-  double contraction_bound() const;
+  double contraction_bound(const Execution& execution) const;
 
   /// Prepares along() for a direction 0 < v <= 1 at the cutoffs set; false where gains jump.
   bool set_direction(std::span<const double> direction, const Execution& execution);
@@ -68,6 +71,16 @@ class CurveGame {
   };
   Pairs pairs(int member, double t) const;
 
+  /// task(i) for every member, split over workers.
+  template <class Task>
+  void for_members(const Execution& execution, const Task& task) const {
+    constexpr int members = 4096;  // of one task
+    run_tasks((size() + members - 1) / members, execution, [&](std::int64_t block, const StopFlag&) {
+      const int first = static_cast<int>(block) * members;
+      for (int i = first; i < std::min(size(), first + members); ++i) task(i);
+    });
+  }
+  double contraction_of(int member, const IndependentBound& independent) const;
   double error_bound(int member) const;
   void bound_curvature(const Execution& execution);
   double pairs_along(int member, double& error) const;

@@ -31,23 +31,19 @@ void CurveGame::bound_curvature(const Execution& execution) {
   const IndependentBound independent(curve_.laws(), stakes_.weight);
   curvature_.assign(size(), 0.0);
   std::vector<char> steps(size(), 0);
-  constexpr int members = 4096;  // of one task
-  run_tasks((size() + members - 1) / members, execution, [&](std::int64_t task, const StopFlag&) {
-    const int first = static_cast<int>(task) * members;
-    for (int i = first; i < std::min(size(), first + members); ++i) {
-      const Overlap::Row row = overlap_.row(i);
-      double all = independent.inverse_variances(i), heard = 0.0;
-      for (std::size_t k = 0; k < row.member.size(); ++k) {
-        steps[i] |= row.sd[k] == 0.0;
-        const double term = stakes_.weight[Overlap::partner(row.member[k])] / (row.sd[k] * row.sd[k]);
-        all += term;
-        if (Overlap::heard(row.member[k])) heard += term;
-      }
-      const double others = curve_.total() - stakes_.weight[i];
-      double sum = stakes_.mix < 1.0 && others > 0.0 ? (1.0 - stakes_.mix) * all / others : 0.0;
-      if (stakes_.mix > 0.0 && heard_weight_[i] > 0.0) sum += stakes_.mix * heard / heard_weight_[i];
-      curvature_[i] = stakes_.benefit[i] > 0.0 ? 1.01 * steepest_density * stakes_.benefit[i] * sum : 0.0;
+  for_members(execution, [&](int i) {
+    const Overlap::Row row = overlap_.row(i);
+    double all = independent.inverse_variances(i), heard = 0.0;
+    for (std::size_t k = 0; k < row.member.size(); ++k) {
+      steps[i] |= row.sd[k] == 0.0;
+      const double term = stakes_.weight[Overlap::partner(row.member[k])] / (row.sd[k] * row.sd[k]);
+      all += term;
+      if (Overlap::heard(row.member[k])) heard += term;
     }
+    const double others = curve_.total() - stakes_.weight[i];
+    double sum = stakes_.mix < 1.0 && others > 0.0 ? (1.0 - stakes_.mix) * all / others : 0.0;
+    if (stakes_.mix > 0.0 && heard_weight_[i] > 0.0) sum += stakes_.mix * heard / heard_weight_[i];
+    curvature_[i] = stakes_.benefit[i] > 0.0 ? 1.01 * steepest_density * stakes_.benefit[i] * sum : 0.0;
   });
   has_step_ = std::any_of(steps.begin(), steps.end(), [](char step) { return step != 0; });
 }

@@ -35,8 +35,8 @@ IndependentBound::IndependentBound(const ThetaLaws& laws, std::span<const double
   }
 }
 
-double IndependentBound::term(int i, int j) const {
-  return ratio(laws_.pull[j], laws_.spread[j], laws_.trust[i], laws_.doubt[i]);
+double IndependentBound::term(int i, double pull, double spread) const {
+  return ratio(pull, spread, laws_.trust[i], laws_.doubt[i]);
 }
 
 void IndependentBound::classify(std::span<const double> weight) {

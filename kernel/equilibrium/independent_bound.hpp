@@ -23,8 +23,9 @@ class IndependentBound {
   /// At least sum_j omega_j / s_ij^2.
   double inverse_variances(int member) const { return inverse_variances_[class_of_[member]]; }
 
-  /// The term of the pair (i, j) itself: (1 - rho_ij) / s_ij without shared information.
-  double term(int i, int j) const;
+  /// The term of the pair of i and a member of this pull and spread itself: (1 - rho_ij) / s_ij without shared
+  /// information.
+  double term(int i, double pull, double spread) const;
 
  private:
   struct Class {

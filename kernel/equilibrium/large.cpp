@@ -37,7 +37,7 @@ using Limit = BestReply::Limit;
 class LargeSolver {
  public:
   LargeSolver(CurveGame& game, const SolveRule& rule, const Execution& execution)
-      : game_(game), rule_(rule), execution_(execution), bound_(game.contraction_bound()) {
+      : game_(game), rule_(rule), execution_(execution), bound_(game.contraction_bound(execution)) {
     double scale = 0.0;
     for (int i = 0; i < game.size(); ++i) {
       scale = std::max({scale, std::fabs(game.lowest(i)), std::fabs(game.highest(i))});

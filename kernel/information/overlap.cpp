@@ -47,23 +47,27 @@ Holders holders_of(const Knowledge& knowledge) {
   return holders;
 }
 
+/// What a pair takes of one member, in one line of memory: rows meet members in no order.
+struct alignas(64) Member {
+  TwoSum held;  // K_i
+  PairMember of_pair;
+};
+
 /// Whose signals and broadcasts reach whom, prepared once for all rows.
 class Sources {
  public:
   Sources(const Knowledge& knowledge, const std::optional<CommonReport>& common)
-      : knowledge(knowledge),
-        common(common),
-        holders(holders_of(knowledge)),
-        broadcasts_of(knowledge.size),
-        held(knowledge.size) {
+      : knowledge(knowledge), common(common), holders(holders_of(knowledge)), broadcasts_of(knowledge.size) {
     for (std::size_t q = 0; q < knowledge.broadcasts.size(); ++q) {
       if (common && common->counted[q]) continue;
       for (int i : knowledge.broadcasts[q].audience) broadcasts_of[i].push_back(static_cast<int>(q));
     }
     for (int i = 0; i < knowledge.size; ++i) {
-      each(i, [&](int, double precision) { held[i].add(precision); });
-      for (int q : broadcasts_of[i]) held[i].add(knowledge.broadcasts[q].precision);
-      if (hear_common(i, i)) held[i].add(common->precision);
+      TwoSum held;
+      each(i, [&](int, double precision) { held.add(precision); });
+      for (int q : broadcasts_of[i]) held.add(knowledge.broadcasts[q].precision);
+      if (hear_common(i, i)) held.add(common->precision);
+      members.push_back({held, {knowledge, i}});
     }
   }
 
@@ -88,18 +92,14 @@ class Sources {
   const std::optional<CommonReport>& common;
   Holders holders;
   std::vector<std::vector<int>> broadcasts_of;
-  std::vector<TwoSum> held;  // K_i
+  std::vector<Member> members;
 };
 
 /// One row at a time: sums of shared precisions and the members they belong to.
 class RowBuilder {
  public:
   RowBuilder(const Sources& sources, bool only_heard)
-      : sources_(sources),
-        knowledge_(sources.knowledge),
-        only_heard_(only_heard),
-        sums_(sources.knowledge.size),
-        seen_(sources.knowledge.size, 0) {}
+      : sources_(sources), knowledge_(sources.knowledge), only_heard_(only_heard), meetings_(sources.knowledge.size) {}
 
   /// At least the number of members that gather(i) meets.
   std::size_t most(int i) const {
@@ -113,9 +113,9 @@ class RowBuilder {
 
   /// Members heard by i, then those met who share information of their own with i, i itself left out.
   const std::vector<int>& gather(int i) {
-    for (int j : met_) seen_[j] = 0;
+    for (int j : met_) meetings_[j].seen = 0;
     met_.clear();
-    seen_[i] = 2;  // not to be listed
+    meetings_[i].seen = 2;  // not to be listed
     only_listed_ = false;
     for (std::int64_t k = knowledge_.start[i]; k < knowledge_.start[i + 1]; ++k) list(knowledge_.speaker[k]);
     only_listed_ = only_heard_;
@@ -123,38 +123,36 @@ class RowBuilder {
     for (int q : sources_.broadcasts_of[i]) {
       for (int j : knowledge_.broadcasts[q].audience) add(j, knowledge_.broadcasts[q].precision);
     }
-    seen_[i] = 0;
-    std::size_t kept = static_cast<std::size_t>(knowledge_.start[i + 1] - knowledge_.start[i]);
-    for (std::size_t k = kept; k < met_.size(); ++k) {
-      if (sums_[met_[k]].value() > 0.0)
-        met_[kept++] = met_[k];
-      else
-        seen_[met_[k]] = 0;
-    }
-    met_.resize(kept);
-    for (int j : met_) {
-      if (sources_.hear_common(i, j)) sums_[j].add(sources_.common->precision);
-    }
+    meetings_[i].seen = 0;
     return met_;
   }
 
-  double shared(int j) const { return sums_[j].value(); }
-  double unshared(int i, int j) const { return std::max(0.0, difference(sources_.held[i], sums_[j])); }
+  /// Whether i and j share information of their own.
+  bool share(int j) const { return meetings_[j].sum.value() > 0.0; }
+
+  ConditionalLaw law(int i, int j) {
+    const Member &of_i = sources_.members[i], &of_j = sources_.members[j];
+    TwoSum& sum = meetings_[j].sum;
+    if (sources_.hear_common(i, j)) sum.add(sources_.common->precision);
+    const double own = std::max(0.0, difference(of_i.held, sum)), other = std::max(0.0, difference(of_j.held, sum));
+    return pair_law(of_i.of_pair, of_j.of_pair, knowledge_.prior_precision, sum.value(), own, other);
+  }
 
  private:
   void list(int j) {
-    if (seen_[j] != 0) return;
-    seen_[j] = 1;
-    sums_[j] = TwoSum{};
+    Meeting& meeting = meetings_[j];
+    if (meeting.seen != 0) return;
+    meeting = {TwoSum{}, 1};
     met_.push_back(j);
   }
 
   void add(int j, double precision) {
-    if (seen_[j] == 0) {
+    Meeting& meeting = meetings_[j];
+    if (meeting.seen == 0) {
       if (only_listed_) return;
       list(j);
     }
-    if (seen_[j] == 1) sums_[j].add(precision);
+    if (meeting.seen == 1) meeting.sum.add(precision);
   }
 
   /// C_ij gains beta_ik beta_jk / beta_k; where one of the two is exact this is the other, without rounding.
@@ -172,8 +170,11 @@ class RowBuilder {
   const Sources& sources_;
   const Knowledge& knowledge_;
   const bool only_heard_;
-  std::vector<TwoSum> sums_;
-  std::vector<char> seen_;
+  struct Meeting {
+    TwoSum sum;    // C_ij so far
+    int seen = 0;  // 1: listed in this row, 2: the row's own member
+  };
+  std::vector<Meeting> meetings_;
   std::vector<int> met_;
   bool only_listed_ = false;
 };
@@ -213,8 +214,8 @@ Overlap::Overlap(const Knowledge& knowledge, const std::optional<CommonReport>& 
       const std::vector<int>& met = builder.gather(i);
       for (std::size_t k = 0; k < met.size(); ++k) {
         const int j = met[k];
-        const ConditionalLaw law =
-            pair_law(knowledge, i, j, builder.shared(j), builder.unshared(i, j), builder.unshared(j, j));
+        if (k >= heard && !builder.share(j)) continue;
+        const ConditionalLaw law = builder.law(i, j);
         block.member.push_back(static_cast<std::uint32_t>(j) | (k < heard ? 0x80000000U : 0U));
         block.one_less_rho.push_back(law.one_less_rho);
         block.sd.push_back(law.sd);

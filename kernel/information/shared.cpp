@@ -96,18 +96,18 @@ double SharedInformation::covariance_given_obstacle(int i, int j) const {
 }
 
 ConditionalLaw SharedInformation::law(int i, int j) const {
-  return pair_law(knowledge_, i, j, shared(i, j), unshared(i, j), unshared(j, i));
+  return pair_law({knowledge_, i}, {knowledge_, j}, knowledge_.prior_precision, shared(i, j), unshared(i, j),
+                  unshared(j, i));
 }
 
-ConditionalLaw pair_law(const Knowledge& k, int i, int j, double shared, double own, double other) {
-  if (k.index_variance[i] == 0.0) return {1.0, std::sqrt(k.index_variance[j])};
-  const double stake_i = k.stake_sd[i] * k.stake_sd[i];
-  const double stake_j = k.stake_sd[j] * k.stake_sd[j];
-  const double precisions = k.posterior_precision[i] * k.posterior_precision[j];
-  const double apart = (k.held[i] * k.held[j] / k.prior_precision) * (own + other) + own * k.held[j] + shared * other;
+ConditionalLaw pair_law(const PairMember& i, const PairMember& j, double alpha, double shared, double own,
+                        double other) {
+  if (i.index_variance == 0.0) return {1.0, std::sqrt(j.index_variance)};
+  const double precisions = i.precision * j.precision;
+  const double apart = (i.held * j.held / alpha) * (own + other) + own * j.held + shared * other;
   const double variance =
-      stake_j + (k.estimate_variance[j] * stake_i + apart / precisions / precisions) / k.index_variance[i];
-  return {(stake_i + own / precisions) / k.index_variance[i], std::sqrt(variance)};
+      j.stake_variance + (j.estimate_variance * i.stake_variance + apart / precisions / precisions) / i.index_variance;
+  return {(i.stake_variance + own / precisions) / i.index_variance, std::sqrt(variance)};
 }
 
 }  // namespace folkmote

@@ -14,8 +14,25 @@ struct ConditionalLaw {
   double sd;            // s_ij
 };
 
+/// What the law of a pair takes of one member, side by side.
+struct PairMember {
+  PairMember(const Knowledge& knowledge, int i)
+      : held(knowledge.held[i]),
+        precision(knowledge.posterior_precision[i]),
+        estimate_variance(knowledge.estimate_variance[i]),
+        index_variance(knowledge.index_variance[i]),
+        stake_variance(knowledge.stake_sd[i] * knowledge.stake_sd[i]) {}
+
+  double held;               // K_i
+  double precision;          // p_i
+  double estimate_variance;  // V_i
+  double index_variance;     // E_i
+  double stake_variance;     // sigma_i^2
+};
+
 /// The law of e_j given e_i from C_ij, own = K_i - C_ij and other = K_j - C_ij.
-ConditionalLaw pair_law(const Knowledge& knowledge, int i, int j, double shared, double own, double other);
+ConditionalLaw pair_law(const PairMember& i, const PairMember& j, double alpha, double shared, double own,
+                        double other);
 
 /// C_ij and what i holds beyond it, for all pairs of one community.
 class SharedInformation {

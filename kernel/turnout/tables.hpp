@@ -14,8 +14,8 @@ namespace folkmote {
 /// community, verdict, contraction_bound, turnout_least, turnout_greatest, width, iterations.
 Table community_table(const Solution& solution);
 
-/// community, member, cutoff_least, cutoff_greatest, chance_least, chance_greatest, information_held (K), in the row order of
-/// members.
+/// community, member, cutoff_least, cutoff_greatest, chance_least, chance_greatest, information_held (K), in the row
+/// order of members.
 Table member_table(const Solution& solution);
 
 /// Turnout and its standard deviation at both ends, by community; given values of theta where there are any, and with

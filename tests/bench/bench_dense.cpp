@@ -80,7 +80,8 @@ int main(int argc, char** argv) {
     std::FILE* file = std::fopen(argv[2], "w");
     if (file == nullptr) return 1;
     for (int i = 0; i < size; ++i) {
-      for (auto k = links.start[i]; k < links.start[i + 1]; ++k) std::fprintf(file, "%d %d\n", i + 1, links.speaker[k] + 1);
+      for (auto k = links.start[i]; k < links.start[i + 1]; ++k)
+        std::fprintf(file, "%d %d\n", i + 1, links.speaker[k] + 1);
     }
     std::fclose(file);
   }

@@ -55,7 +55,7 @@ void check_gains(Compared& c, std::uint64_t seed) {
 /// The bound over the whole line is never smaller than the dense form's, and a little larger at most; a common report
 /// leaves it valid, but wider.
 void check_bound(const Compared& c) {
-  const double dense = c.dense.contraction_bound(), curve = c.curve.contraction_bound();
+  const double dense = c.dense.contraction_bound(), curve = c.curve.contraction_bound({});
   if (!std::isfinite(dense)) return;
   CHECK(curve >= dense * (1.0 - 1e-12));
   if (!c.common) CHECK(curve <= dense * (1.0 + 1e-6) + 1e-9);

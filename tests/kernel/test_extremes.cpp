@@ -49,9 +49,9 @@ std::shared_ptr<const Study> make(const Shape& shape, double relay, double broad
   Table broadcasts = studies::group_table("broadcast", {some});
   broadcasts.add("precision", std::vector<double>(some.size(), broadcast));
   const Table gatherings = studies::group_table("gathering", {all});
-  return std::make_shared<const Study>(make_study({members, shape.links.empty() ? nullptr : &links,
-                                                   broadcast > 0.0 ? &broadcasts : nullptr,
-                                                   shape.gathering ? &gatherings : nullptr, nullptr, false}));
+  return std::make_shared<const Study>(
+      make_study({members, shape.links.empty() ? nullptr : &links, broadcast > 0.0 ? &broadcasts : nullptr,
+                  shape.gathering ? &gatherings : nullptr, nullptr, false}));
 }
 
 /// What must hold of any enclosure.
@@ -146,8 +146,8 @@ TEST_CASE("precisions from 1e-8 to 1e8 on every small shape", "[extremes]") {
       }
     }
   }
-  // Where cutoffs of 10^6 meet signals of precision 10^8, or all share all they know but for stakes of 10^-8, doubles do
-  // not resolve the answer: these end as "not converged", with their width, and are few.
+  // Where cutoffs of 10^6 meet signals of precision 10^8, or all share all they know but for stakes of 10^-8, doubles
+  // do not resolve the answer: these end as "not converged", with their width, and are few.
   int all = 0;
   for (const auto& [verdict, count] : verdicts) all += count;
   CAPTURE(all);
