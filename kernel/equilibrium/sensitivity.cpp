@@ -15,9 +15,6 @@
 // gives the gradient in all of them, candidate links included, which touch K_i and the C_ij of all who share with i.
 //
 // Forward. For the cutoffs themselves: one solve per shift.
-//   dN_ij = dC_ij / (p_i p_j) + [ (K_j/alpha) / (p_i p_j) - N_ij/p_i ] dK_i + [ the same of j ]
-//           - [ K_i K_j / (alpha^2 p_i p_j) + N_ij/p_i + N_ij/p_j ] dalpha
-//   dE_i  = dK_i / p_i^2 - (K_i / (alpha p_i)) (1/alpha + 1/p_i) dalpha + 2 sigma_i dsigma_i
 
 namespace folkmote {
 
@@ -37,23 +34,6 @@ Change change_of(Sensitive parameter) {
 }
 
 double when(bool condition) { return condition ? 1.0 : 0.0; }
-
-/// dE_i / dalpha.
-double variance_by_prior(const Knowledge& k, int i) {
-  return -k.estimate_variance[i] * (1.0 / k.prior_precision + 1.0 / k.posterior_precision[i]);
-}
-
-/// The derivatives of N_ij.
-struct CovarianceSlopes {
-  double shared, held_i, held_j, prior_precision;
-};
-
-CovarianceSlopes covariance_slopes(const Knowledge& k, double covariance, int i, int j) {
-  const double alpha = k.prior_precision, p_i = k.posterior_precision[i], p_j = k.posterior_precision[j];
-  const double both = 1.0 / (p_i * p_j);
-  return {both, k.held[j] / alpha * both - covariance / p_i, k.held[i] / alpha * both - covariance / p_j,
-          -(k.held[i] / alpha) * (k.held[j] / alpha) * both - covariance / p_i - covariance / p_j};
-}
 
 }  // namespace
 
@@ -125,24 +105,20 @@ std::span<const double> TurnoutGradient::own(Sensitive parameter) const {
   }
 }
 
-EndSensitivity::EndSensitivity(const Knowledge& knowledge, const SharedInformation& shared,
-                               const InformationSlopes& slopes, GainRows& game, std::span<const double> weights,
-                               std::span<const double> cutoffs, double tolerance)
+EndSensitivity::EndSensitivity(const Knowledge& knowledge, const InformationSlopes& slopes, GameSlopes& game,
+                               std::span<const double> weights, std::span<const double> cutoffs, double tolerance)
     : knowledge_(knowledge),
-      shared_(shared),
       slopes_(slopes),
       game_(game),
       weight_(weights.begin(), weights.end()),
-      shared_row_(weights.size()) {
+      cutoffs_(cutoffs.begin(), cutoffs.end()) {
   const double total = ordered_sum(weights);
   for (double& weight : weight_) weight /= total;
-  Polished found = polish(game, cutoffs, tolerance);
-  status_ = found.outcome == Polished::Outcome::solved  ? EndStatus::solved
-            : found.outcome == Polished::Outcome::jumps ? EndStatus::gain_jumps
-                                                        : EndStatus::near_tangency;
+  const Outcome outcome = polish(game.tangent(), cutoffs_, tolerance);
+  status_ = outcome == Outcome::solved  ? EndStatus::solved
+            : outcome == Outcome::jumps ? EndStatus::gain_jumps
+                                        : EndStatus::near_tangency;
   if (status_ != EndStatus::solved) return;
-  cutoffs_ = std::move(found.cutoffs);
-  tangent_ = std::move(found.tangent);
   for (int i = 0; i < knowledge.size; ++i) {
     const double sd = std::sqrt(knowledge.index_variance[i]);
     density_.push_back(normal_density((cutoffs_[i] - knowledge.prior_mean) / sd) / sd);
@@ -153,76 +129,58 @@ TurnoutGradient EndSensitivity::turnout_gradient() {
   const std::size_t n = weight_.size();
   std::vector<double> by_cutoff(n);
   for (std::size_t i = 0; i < n; ++i) by_cutoff[i] = weight_[i] * density_[i];
-  const auto worth = tangent_.worth(by_cutoff);
-  TurnoutGradient gradient;
+  const auto worth = game_.tangent().worth(by_cutoff);
+  TurnoutGradient result;
   if (!worth) {
     status_ = EndStatus::near_tangency;
-    return gradient;
+    return result;
   }
-  gradient.laws.held.assign(n, 0.0);
-  std::vector<double> by_variance(n), by_covariance(n * n);
+  GameGradient game = game_.gradient(cutoffs_, *worth);
+  result.prior_mean = game.prior_mean - ordered_sum(by_cutoff);
+  result.prior_precision = game.prior_precision;
+  result.benefit = std::move(game.benefit);
+  result.stake_sd = std::move(game.stake_sd);
+  result.laws = {std::move(game.held), std::move(game.shared)};
   for (std::size_t i = 0; i < n; ++i) {
     const double above_mean = cutoffs_[i] - knowledge_.prior_mean;
-    by_variance[i] = -0.5 * by_cutoff[i] * above_mean / knowledge_.index_variance[i];
-    gradient.prior_mean -= by_cutoff[i];
+    const double direct = -0.5 * by_cutoff[i] * above_mean / knowledge_.index_variance[i];
+    add_member(static_cast<int>(i), game.variance[i] + direct, result);
+    result.cost.push_back(-(*worth)[i]);
   }
-  for (std::size_t i = 0; i < n; ++i) {
-    game_.fill(static_cast<int>(i), cutoffs_, row_);
-    const double x = (*worth)[i];
-    gradient.prior_mean += x * row_.prior_mean;
-    gradient.benefit.push_back(x * row_.benefit);
-    gradient.cost.push_back(-x);
-    for (std::size_t j = 0; j < n; ++j) {
-      by_variance[j] += x * row_.variance[j];
-      by_covariance[i * n + j] = x * row_.covariance[j];
-    }
-  }
-  gradient.laws.shared.assign(n * n, 0.0);
-  add_pairs(by_covariance, gradient);
-  for (std::size_t i = 0; i < n; ++i) add_member(static_cast<int>(i), by_variance[i], gradient);
-  gradient.sources = slopes_.gradient(gradient.laws);
-  return gradient;
-}
-
-void EndSensitivity::add_pairs(std::span<const double> covariance, TurnoutGradient& gradient) const {
-  const std::size_t n = weight_.size();
-  LawGradient& laws = gradient.laws;
-  for (std::size_t i = 0; i < n; ++i) {
-    for (std::size_t j = i + 1; j < n; ++j) {
-      const double by = covariance[i * n + j] + covariance[j * n + i];
-      if (by == 0.0) continue;
-      const int a = static_cast<int>(i), b = static_cast<int>(j);
-      const CovarianceSlopes slopes = covariance_slopes(knowledge_, shared_.covariance(a, b), a, b);
-      laws.shared[i * n + j] = laws.shared[j * n + i] = by * slopes.shared;
-      laws.held[i] += by * slopes.held_i;
-      laws.held[j] += by * slopes.held_j;
-      gradient.prior_precision += by * slopes.prior_precision;
-    }
-  }
+  result.sources = slopes_.gradient(result.laws);
+  const auto add = [](std::vector<double>& to, const std::vector<double>& from) {
+    for (std::size_t k = 0; k < to.size(); ++k) to[k] += from[k];
+  };
+  add(result.sources.signal_precision, game.sources.signal_precision);
+  add(result.sources.relay_precision, game.sources.relay_precision);
+  add(result.sources.broadcast_precision, game.sources.broadcast_precision);
+  return result;
 }
 
 void EndSensitivity::add_member(int i, double by_variance, TurnoutGradient& gradient) const {
   const double p = knowledge_.posterior_precision[i];
   gradient.laws.held[i] += by_variance / p / p;
   gradient.prior_precision += by_variance * variance_by_prior(knowledge_, i);
-  gradient.stake_sd.push_back(2.0 * knowledge_.stake_sd[i] * by_variance);
+  gradient.stake_sd[i] += 2.0 * knowledge_.stake_sd[i] * by_variance;
 }
 
 MemberSlopes EndSensitivity::member_slopes(const CommonShift& shift) {
   const std::size_t n = weight_.size();
-  const double alpha = when(shift.parameter == Sensitive::prior_precision);
-  const double sigma = when(shift.parameter == Sensitive::stake_sd);
-  const double mu = when(shift.parameter == Sensitive::prior_mean);
-  std::vector<double> held(n), variance(n), raised_by(n);
-  for (std::size_t i = 0; i < n; ++i) {
-    const int member = static_cast<int>(i);
+  GameShift game;
+  game.prior_mean = when(shift.parameter == Sensitive::prior_mean);
+  game.prior_precision = when(shift.parameter == Sensitive::prior_precision);
+  game.benefit = when(shift.parameter == Sensitive::benefit);
+  game.cost = when(shift.parameter == Sensitive::cost);
+  game.stake_sd = when(shift.parameter == Sensitive::stake_sd);
+  game.change = change_of(shift.parameter);
+  game.broadcast = shift.broadcast;
+  for (int i = 0; i < knowledge_.size; ++i) {
     const double p = knowledge_.posterior_precision[i];
-    held[i] = slopes_.held(change_of(shift.parameter), shift.broadcast, member);
-    variance[i] =
-        held[i] / p / p + alpha * variance_by_prior(knowledge_, member) + sigma * 2.0 * knowledge_.stake_sd[i];
+    game.held.push_back(slopes_.held(game.change, shift.broadcast, i));
+    game.variance.push_back(game.held[i] / p / p + game.prior_precision * variance_by_prior(knowledge_, i) +
+                            game.stake_sd * 2.0 * knowledge_.stake_sd[i]);
   }
-  for (std::size_t i = 0; i < n; ++i) raised_by[i] = raised(static_cast<int>(i), shift, held, variance);
-  const auto moved = tangent_.moved(raised_by);
+  const auto moved = game_.tangent().moved(game_.raised(cutoffs_, game));
   MemberSlopes slopes;
   if (!moved) {
     status_ = EndStatus::near_tangency;
@@ -231,29 +189,10 @@ MemberSlopes EndSensitivity::member_slopes(const CommonShift& shift) {
   slopes.cutoff = *moved;
   for (std::size_t i = 0; i < n; ++i) {
     const double above_mean = cutoffs_[i] - knowledge_.prior_mean;
-    const double spread = 0.5 * above_mean * variance[i] / knowledge_.index_variance[i];
-    slopes.chance.push_back(density_[i] * (slopes.cutoff[i] - mu - spread));
+    const double spread = 0.5 * above_mean * game.variance[i] / knowledge_.index_variance[i];
+    slopes.chance.push_back(density_[i] * (slopes.cutoff[i] - game.prior_mean - spread));
   }
   return slopes;
-}
-
-/// dF_i at fixed cutoffs.
-double EndSensitivity::raised(int i, const CommonShift& shift, std::span<const double> held,
-                              std::span<const double> variance) {
-  game_.fill(i, cutoffs_, row_);
-  slopes_.shared(change_of(shift.parameter), shift.broadcast, i, shared_row_);
-  const double alpha = when(shift.parameter == Sensitive::prior_precision);
-  double sum = ordered_dot(row_.variance, variance);
-  for (int j = 0; j < knowledge_.size; ++j) {
-    if (row_.covariance[j] == 0.0) continue;
-    const CovarianceSlopes slopes = covariance_slopes(knowledge_, shared_.covariance(i, j), i, j);
-    sum += row_.covariance[j] * (slopes.shared * shared_row_[j] + slopes.held_i * held[i] + slopes.held_j * held[j] +
-                                 slopes.prior_precision * alpha);
-  }
-  if (shift.parameter == Sensitive::prior_mean) sum += row_.prior_mean;
-  if (shift.parameter == Sensitive::benefit) sum += row_.benefit;
-  if (shift.parameter == Sensitive::cost) sum -= 1.0;
-  return sum;
 }
 
 }  // namespace folkmote

@@ -6,8 +6,7 @@
 #include <span>
 #include <vector>
 
-#include "equilibrium/tangent.hpp"
-#include "information/slopes.hpp"
+#include "equilibrium/game_slopes.hpp"
 
 namespace folkmote {
 
@@ -61,34 +60,29 @@ struct MemberSlopes {
 /// One end of one community.
 class EndSensitivity {
  public:
-  /// `cutoffs` lie within `tolerance` of an equilibrium. The first three must outlive this object.
-  EndSensitivity(const Knowledge& knowledge, const SharedInformation& shared, const InformationSlopes& slopes,
-                 GainRows& game, std::span<const double> weights, std::span<const double> cutoffs, double tolerance);
+  /// `cutoffs` lie within `tolerance` of an equilibrium. The first three must outlive this object, which leaves the
+  /// game's tangent at the equilibrium.
+  EndSensitivity(const Knowledge& knowledge, const InformationSlopes& slopes, GameSlopes& game,
+                 std::span<const double> weights, std::span<const double> cutoffs, double tolerance);
 
   EndStatus status() const { return status_; }
 
-  /// By one transposed solve and one sweep back over all pairs; status() is solved.
+  /// By one transposed solve and one sweep back over the game; status() is solved.
   TurnoutGradient turnout_gradient();
 
-  /// By one solve and one sweep over all pairs; status() is solved.
+  /// By one solve and one sweep over the game; status() is solved.
   MemberSlopes member_slopes(const CommonShift& shift);
 
  private:
-  void add_pairs(std::span<const double> covariance, TurnoutGradient& gradient) const;
   void add_member(int i, double by_variance, TurnoutGradient& gradient) const;
-  double raised(int i, const CommonShift& shift, std::span<const double> held, std::span<const double> variance);
 
   const Knowledge& knowledge_;
-  const SharedInformation& shared_;
   const InformationSlopes& slopes_;
-  GainRows& game_;
+  GameSlopes& game_;
   std::vector<double> weight_;  // omega_i / sum omega
   EndStatus status_;
   std::vector<double> cutoffs_;
-  Tangent tangent_;
   std::vector<double> density_;  // phi(y_i) / sqrt(E_i), y_i = (kappa_i - mu) / sqrt(E_i)
-  GainRow row_;
-  std::vector<double> shared_row_;
 };
 
 }  // namespace folkmote

@@ -7,7 +7,7 @@
 #include <span>
 #include <vector>
 
-#include "equilibrium/gain_rows.hpp"
+#include "parallel/workers.hpp"
 
 namespace folkmote {
 
@@ -15,9 +15,16 @@ namespace folkmote {
 /// cutoff passes into i's reply.
 class Tangent {
  public:
-  /// Takes the derivatives at `cutoffs`; false where a gain jumps.
-  bool set(GainRows& game, std::span<const double> cutoffs);
+  /// Products stop with Cancelled once `stop` is raised; nullptr: never.
+  explicit Tangent(const StopFlag* stop) : stop_(stop) {}
+  virtual ~Tangent() = default;
+  Tangent(const Tangent&) = delete;
+  Tangent& operator=(const Tangent&) = delete;
 
+  /// Takes the derivatives at `cutoffs`; false where a gain jumps.
+  virtual bool set(std::span<const double> cutoffs) = 0;
+
+  /// F at the cutoffs set.
   std::span<const double> gains() const { return gains_; }
 
   /// (dF/dkappa)^-1 (-right): how cutoffs move when the gains are raised by `right`.
@@ -32,25 +39,24 @@ class Tangent {
   /// matrix is singular: two equilibria meet there, or have just parted.
   double amplification() const;
 
- private:
-  std::vector<double> apply(std::span<const double> v) const;
-  std::vector<double> apply_transposed(std::span<const double> v) const;
-  std::span<const double> row(int i) const {
-    return {passed_.data() + static_cast<std::size_t>(i) * diagonal_.size(), diagonal_.size()};
-  }
+ protected:
+  /// P v, and P^T v.
+  virtual std::vector<double> passed(std::span<const double> v) const = 0;
+  virtual std::vector<double> passed_back(std::span<const double> v) const = 0;
 
   std::vector<double> gains_;
   std::vector<double> diagonal_;  // D
-  std::vector<double> passed_;    // P by row
+
+ private:
+  std::vector<double> kept(std::span<const double> v, bool back) const;
+
+  const StopFlag* stop_;
 };
 
-/// Newton's steps from cutoffs within `tolerance` of an equilibrium to the equilibrium itself, and the linearisation
-/// there.
-struct Polished {
-  enum class Outcome { solved, jumps, singular } outcome;
-  std::vector<double> cutoffs;
-  Tangent tangent;
-};
-Polished polish(GainRows& game, std::span<const double> cutoffs, double tolerance);
+enum class Outcome { solved, jumps, singular };
+
+/// Newton's steps from `cutoffs`, within `tolerance` of an equilibrium, to the equilibrium itself, where the tangent is
+/// left. Singular where they lead elsewhere, or where the amplification is too large for derivatives of six digits.
+Outcome polish(Tangent& tangent, std::vector<double>& cutoffs, double tolerance);
 
 }  // namespace folkmote

@@ -8,6 +8,7 @@
 
 #include "community/columns.hpp"
 #include "community/fault.hpp"
+#include "equilibrium/dense_slopes.hpp"
 
 namespace folkmote {
 
@@ -18,18 +19,20 @@ constexpr int ends = 2;  // least, greatest
 
 /// What one community's game is differentiated with.
 struct CommunityGame {
-  CommunityGame(const Solution& solution, int c)
+  CommunityGame(const Solution& solution, int c, const StopFlag& stop)
       : knowledge(make_knowledge(*solution.study, solution.beliefs, c)),
         shared(knowledge),
         slopes(knowledge),
         stakes(make_stakes(*solution.study, solution.payoff, c)),
-        game(knowledge, shared, stakes) {}
+        rows(knowledge, shared, stakes),
+        game(knowledge, shared, slopes, rows, &stop) {}
 
   Knowledge knowledge;
   SharedInformation shared;
   InformationSlopes slopes;
   Stakes stakes;
-  ShareRows game;
+  ShareRows rows;
+  DenseSlopes game;
 };
 
 struct EndFound {
@@ -41,7 +44,7 @@ struct EndFound {
 /// The derivatives at one end, those of members for the shifts given.
 EndFound differentiate(CommunityGame& game, std::span<const double> cutoffs, double tolerance,
                        std::span<const CommonShift> shifts) {
-  EndSensitivity end(game.knowledge, game.shared, game.slopes, game.game, game.stakes.weight, cutoffs, tolerance);
+  EndSensitivity end(game.knowledge, game.slopes, game.game, game.stakes.weight, cutoffs, tolerance);
   EndFound found;
   if (end.status() == EndStatus::solved) found.gradient = end.turnout_gradient();
   for (const CommonShift& shift : shifts) {
@@ -56,7 +59,7 @@ struct BothEnds {
 };
 
 /// Calls use(ends, game) with both ends of community c; the game is absent where nothing could be differentiated.
-BothEnds differentiate_community(const Solution& solution, int c, std::span<const CommonShift> shifts,
+BothEnds differentiate_community(const Solution& solution, int c, std::span<const CommonShift> shifts, const StopFlag& stop,
                                  const std::function<void(const CommunityGame&, const BothEnds&)>& use = {}) {
   const Enclosure& found = solution.enclosures[c];
   BothEnds both;
@@ -65,7 +68,7 @@ BothEnds differentiate_community(const Solution& solution, int c, std::span<cons
     for (EndFound& end : both.end) end.status = EndStatus::too_large;
     return both;
   }
-  CommunityGame game(solution, c);
+  CommunityGame game(solution, c, stop);
   const double tolerance = std::max(solution.rule.tolerance, found.width);
   if (found.verdict == Verdict::proved_unique) {
     std::vector<double> middle(found.least.size());
@@ -126,10 +129,11 @@ std::vector<BothEnds> differentiate_all(const Solution& solution, std::span<cons
                                         const Execution& execution) {
   const std::vector<Community>& communities = solution.study->communities;
   std::vector<BothEnds> all(communities.size());
-  run_tasks(static_cast<std::int64_t>(all.size()), execution, [&](std::int64_t c, const StopFlag&) {
+  run_tasks(static_cast<std::int64_t>(all.size()), execution, [&](std::int64_t c, const StopFlag& stop) {
     const std::vector<CommonShift> shifts = shifts_in(communities[c], parameters);
     all[c] = differentiate_community(solution, static_cast<int>(c),
-                                     members ? std::span<const CommonShift>(shifts) : std::span<const CommonShift>());
+                                     members ? std::span<const CommonShift>(shifts) : std::span<const CommonShift>(),
+                                     stop);
     for (EndFound& end : all[c].end) end.gradient.laws = {};
   });
   return all;
@@ -265,10 +269,10 @@ Table link_sensitivity_table(const Solution& solution, const Execution& executio
   LinkRows rows(first.back());
   std::vector<Text> status[ends];
   for (auto& column : status) column.resize(first.back());
-  run_tasks(static_cast<std::int64_t>(study.communities.size()), execution, [&](std::int64_t c, const StopFlag&) {
+  run_tasks(static_cast<std::int64_t>(study.communities.size()), execution, [&](std::int64_t c, const StopFlag& stop) {
     fill_precision(make_knowledge(study, solution.beliefs, static_cast<int>(c)), first[c], rows);
     const BothEnds both = differentiate_community(
-        solution, static_cast<int>(c), {},
+        solution, static_cast<int>(c), {}, stop,
         [&](const CommunityGame& game, const BothEnds& found) { fill_turnout(game, found, first[c], rows); });
     for (int e = 0; e < ends; ++e) {
       if (both.end[e].status != EndStatus::solved) {
