@@ -391,10 +391,9 @@ typedef enum folkmote_sensitive {
  * for the relay precision, that of all reports that it hears; NaN where members have no value of their own),
  * status_least, status_greatest.
  * A status is "solved", or says why there are only NaN at that end: "near a tangency" (two equilibria meet there or
- * have just parted), "a gain jumps" (an index is certain, given another), "not converged", "too large" (above 2,000
- * members).
- *   parameters  `parameter_count` different numbers; with count 0 all of the above, and NULL is allowed
- *   level       a folkmote_level
+ * have just parted), "a gain jumps" (an index is certain, given another), "not converged", "too many pairs" (above
+ * 2,000 members, of whom more than 5e7 ordered pairs share information; an audience counts with its square). parameters
+ * `parameter_count` different numbers; with count 0 all of the above, and NULL is allowed level       a folkmote_level
  *   options     threads and progress; NULL: the defaults
  *   table       out: in units of turnout (0..1), chance or cutoff per unit of the parameter; the caller destroys it.
  *               NULL on failure. */

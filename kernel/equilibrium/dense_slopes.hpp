@@ -18,9 +18,7 @@ class DenseTangent : public Tangent {
   std::vector<double> passed_back(std::span<const double> v) const override;
 
  private:
-  std::span<const double> row(std::size_t i) const {
-    return {matrix_.data() + i * diagonal_.size(), diagonal_.size()};
-  }
+  std::span<const double> row(std::size_t i) const { return {matrix_.data() + i * diagonal_.size(), diagonal_.size()}; }
 
   GainRows& game_;
   std::vector<double> matrix_;

@@ -10,6 +10,16 @@ void GainRow::clear(int size) {
   for (std::vector<double>* part : {&cutoff, &covariance, &variance}) part->assign(size, 0.0);
 }
 
+PairSlopes pair_slopes(double z, const ConditionalLaw& law, double above_mean, double own_variance) {
+  const double rho = 1.0 - law.one_less_rho;
+  const double pull = normal_density(z) / law.sd;
+  const double by_variance = -0.5 * pull * z / law.sd;  // in s_ij^2
+  const double by_rho = pull * above_mean / own_variance;
+  return {pull,        -by_rho - 2.0 * by_variance * rho,
+          by_variance, rho * (by_rho + by_variance * rho),
+          pull * rho,  pull * law.one_less_rho};
+}
+
 bool ShareRows::fill(int i, std::span<const double> cutoffs, GainRow& row) {
   row.clear(size());
   const ReachRow reach = reach_of(stakes_, knowledge_, i);
@@ -23,20 +33,18 @@ bool ShareRows::fill(int i, std::span<const double> cutoffs, GainRow& row) {
     const ConditionalLaw law = shared_.law(i, j);
     if (law.sd == 0.0) return false;
     z_[k] = ((cutoffs[j] - cutoffs[i]) + law.one_less_rho * above_mean) / law.sd;
-    const double pull = stakes_.benefit[i] * reach.weight[k] * normal_density(z_[k]) / law.sd;
-    const double by_variance = -0.5 * pull * z_[k] / law.sd;  // dF_i/ds_ij^2
-    const double rho = shared_.covariance(i, j) / variance;
-    row.cutoff[j] = pull;
-    row.covariance[j] = -pull * above_mean / variance - 2.0 * by_variance * rho;
-    row.variance[j] += by_variance;
-    row.variance[i] += rho * (pull * above_mean / variance + by_variance * rho);
-    carried += pull * (1.0 - law.one_less_rho);
-    kept += pull * law.one_less_rho;
+    const PairSlopes slopes = pair_slopes(z_[k], law, above_mean, variance);
+    const double worth = stakes_.benefit[i] * reach.weight[k];
+    row.cutoff[j] = worth * slopes.cutoff;
+    row.covariance[j] = worth * slopes.covariance;
+    row.variance[j] += worth * slopes.other;
+    row.variance[i] += worth * slopes.own;
+    carried += worth * slopes.carried;
+    kept += worth * slopes.kept;
   }
   normal_cdf(z_, z_);
   row.benefit = ordered_dot(reach.weight, z_);
   row.gain = stakes_.benefit[i] * row.benefit - stakes_.cost[i] - cutoffs[i];
-  // dz_ij/dt = -rho_ij / s_ij, dz_ij/dmu = -(1 - rho_ij) / s_ij.
   row.cutoff[i] = -1.0 - carried;
   row.prior_mean = -kept;
   return true;

@@ -11,6 +11,18 @@
 
 namespace folkmote {
 
+/// The derivatives of one pair's chance Phi(z_ij), z_ij = ( (kappa_j - mu) - (N_ij / E_i)(kappa_i - mu) ) / s_ij and
+/// s_ij^2 = E_j - N_ij^2 / E_i.
+struct PairSlopes {
+  double cutoff;      // in kappa_j: phi(z_ij) / s_ij
+  double covariance;  // in N_ij
+  double other;       // in E_j
+  double own;         // in E_i
+  double carried;     // in kappa_i, less its sign
+  double kept;        // in mu, less its sign
+};
+PairSlopes pair_slopes(double z, const ConditionalLaw& law, double above_mean, double own_variance);
+
 /// F_i at t = kappa_i and its partial derivatives. The laws of the indices enter through N_ij = Cov(e_i, e_j) and
 /// E_j = Var(e_j). The cost enters every payoff as -c_i.
 struct GainRow {
@@ -33,9 +45,7 @@ class GainRows {
   virtual bool fill(int member, std::span<const double> cutoffs, GainRow& row) = 0;
 };
 
-/// The share payoff, F_i = b_i sum_j w_ij Phi(z_ij) - c_i - kappa_i with
-///   z_ij = ( (kappa_j - mu) - (N_ij / E_i)(kappa_i - mu) ) / s_ij,  s_ij^2 = E_j - N_ij^2 / E_i.
-/// Who is in a member's reach is held fixed.
+/// The share payoff, F_i = b_i sum_j w_ij Phi(z_ij) - c_i - kappa_i. Who is in a member's reach is held fixed.
 class ShareRows : public GainRows {
  public:
   ShareRows(const Knowledge& knowledge, const SharedInformation& shared, const Stakes& stakes)

@@ -68,8 +68,8 @@ const char* status_text(EndStatus status) {
       return "near a tangency";
     case EndStatus::gain_jumps:
       return "a gain jumps";
-    case EndStatus::too_large:
-      return "too large";
+    case EndStatus::too_many_pairs:
+      return "too many pairs";
     default:
       return "not converged";
   }

@@ -26,7 +26,7 @@ enum class Sensitive : int {
 const char* sensitive_name(Sensitive parameter);
 
 /// Why an end of the equilibrium set has derivatives, or has none.
-enum class EndStatus { solved, near_tangency, gain_jumps, not_converged, too_large };
+enum class EndStatus { solved, near_tangency, gain_jumps, not_converged, too_many_pairs };
 const char* status_text(EndStatus status);
 
 /// All values of one parameter in a community move alike; a broadcast's precision by itself.

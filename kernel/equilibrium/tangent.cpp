@@ -4,7 +4,6 @@
 #include <cmath>
 #include <limits>
 
-#include "community/fault.hpp"
 #include "numerics/gmres.hpp"
 
 namespace folkmote {
@@ -25,7 +24,7 @@ double largest(std::span<const double> v) {
 
 /// v - P v, or v - P^T v.
 std::vector<double> Tangent::kept(std::span<const double> v, bool back) const {
-  if (stop_ != nullptr && stop_->raised()) throw Cancelled();
+  if (stop_ != nullptr && stop_->raised()) throw Stopped{};
   std::vector<double> result = back ? passed_back(v) : passed(v);
   for (std::size_t i = 0; i < v.size(); ++i) result[i] = v[i] - result[i];
   return result;

@@ -11,11 +11,15 @@
 
 namespace folkmote {
 
+/// Thrown out of a task whose run has been stopped, so that it ends at once. The task itself has not failed: it catches
+/// this, and whoever stopped the run says why.
+struct Stopped {};
+
 /// dF/dkappa = -D (I - P): D_i = -dF_i/dt >= 1, and P_ij = (dF_i/dkappa_j) / D_i >= 0 is how much of a move of j's
 /// cutoff passes into i's reply.
 class Tangent {
  public:
-  /// Products stop with Cancelled once `stop` is raised; nullptr: never.
+  /// Products throw Stopped once `stop` is raised; nullptr: never.
   explicit Tangent(const StopFlag* stop) : stop_(stop) {}
   virtual ~Tangent() = default;
   Tangent(const Tangent&) = delete;

@@ -47,9 +47,9 @@ class InformationSlopes {
     } else if (change != Change::none) {
       each_source(i, [&](int k, double r, double slope) {
         for (const Holder& j : holders_[k]) {
-          visit(j.member, change == Change::signal_precision ? by_signal(r, j.fraction)
-                                                             : j.fraction * by_relay(r, slope) +
-                                                                   r * by_relay(j.fraction, j.relay_slope));
+          visit(j.member, change == Change::signal_precision
+                              ? by_signal(r, j.fraction)
+                              : j.fraction * by_relay(r, slope) + r * by_relay(j.fraction, j.relay_slope));
         }
       });
     }

@@ -3,12 +3,14 @@
 #include <algorithm>
 #include <functional>
 #include <limits>
+#include <memory>
 #include <optional>
 #include <string>
 
 #include "community/columns.hpp"
 #include "community/fault.hpp"
 #include "equilibrium/dense_slopes.hpp"
+#include "equilibrium/wide_slopes.hpp"
 
 namespace folkmote {
 
@@ -17,22 +19,31 @@ namespace {
 constexpr double no_value = std::numeric_limits<double>::quiet_NaN();
 constexpr int ends = 2;  // least, greatest
 
-/// What one community's game is differentiated with.
+/// What one community's game is differentiated with, over all pairs or by the grid of theta.
 struct CommunityGame {
-  CommunityGame(const Solution& solution, int c, const StopFlag& stop)
+  CommunityGame(const Solution& solution, int c)
       : knowledge(make_knowledge(*solution.study, solution.beliefs, c)),
-        shared(knowledge),
         slopes(knowledge),
-        stakes(make_stakes(*solution.study, solution.payoff, c)),
-        rows(knowledge, shared, stakes),
-        game(knowledge, shared, slopes, rows, &stop) {}
+        stakes(make_stakes(*solution.study, solution.payoff, c)) {}
+
+  /// False where neither serves.
+  bool prepare(const StopFlag& stop) {
+    if (knowledge.size <= most_differentiated) {
+      shared.emplace(knowledge);
+      rows.emplace(knowledge, *shared, stakes);
+      game = std::make_unique<DenseSlopes>(knowledge, *shared, slopes, *rows, &stop);
+    } else if (wide_slopes_serve(knowledge)) {
+      game = std::make_unique<WideSlopes>(knowledge, slopes, stakes, &stop);
+    }
+    return game != nullptr;
+  }
 
   Knowledge knowledge;
-  SharedInformation shared;
   InformationSlopes slopes;
   Stakes stakes;
-  ShareRows rows;
-  DenseSlopes game;
+  std::optional<SharedInformation> shared;
+  std::optional<ShareRows> rows;
+  std::unique_ptr<GameSlopes> game;
 };
 
 struct EndFound {
@@ -44,7 +55,7 @@ struct EndFound {
 /// The derivatives at one end, those of members for the shifts given.
 EndFound differentiate(CommunityGame& game, std::span<const double> cutoffs, double tolerance,
                        std::span<const CommonShift> shifts) {
-  EndSensitivity end(game.knowledge, game.slopes, game.game, game.stakes.weight, cutoffs, tolerance);
+  EndSensitivity end(game.knowledge, game.slopes, *game.game, game.stakes.weight, cutoffs, tolerance);
   EndFound found;
   if (end.status() == EndStatus::solved) found.gradient = end.turnout_gradient();
   for (const CommonShift& shift : shifts) {
@@ -59,16 +70,17 @@ struct BothEnds {
 };
 
 /// Calls use(ends, game) with both ends of community c; the game is absent where nothing could be differentiated.
-BothEnds differentiate_community(const Solution& solution, int c, std::span<const CommonShift> shifts, const StopFlag& stop,
+BothEnds differentiate_community(const Solution& solution, int c, std::span<const CommonShift> shifts,
+                                 const StopFlag& stop,
                                  const std::function<void(const CommunityGame&, const BothEnds&)>& use = {}) {
   const Enclosure& found = solution.enclosures[c];
   BothEnds both;
   if (found.verdict == Verdict::not_converged) return both;
-  if (solution.study->communities[c].size > most_differentiated) {
-    for (EndFound& end : both.end) end.status = EndStatus::too_large;
+  CommunityGame game(solution, c);
+  if (!game.prepare(stop)) {
+    for (EndFound& end : both.end) end.status = EndStatus::too_many_pairs;
     return both;
   }
-  CommunityGame game(solution, c, stop);
   const double tolerance = std::max(solution.rule.tolerance, found.width);
   if (found.verdict == Verdict::proved_unique) {
     std::vector<double> middle(found.least.size());
@@ -81,6 +93,17 @@ BothEnds differentiate_community(const Solution& solution, int c, std::span<cons
   }
   if (use) use(game, both);
   return both;
+}
+
+/// run_tasks for tasks that Stopped may end.
+template <class Task>
+void run_until_stopped(std::size_t count, const Execution& execution, const Task& task) {
+  run_tasks(static_cast<std::int64_t>(count), execution, [&](std::int64_t number, const StopFlag& stop) {
+    try {
+      task(static_cast<std::size_t>(number), stop);
+    } catch (const Stopped&) {
+    }
+  });
 }
 
 /// The shifts that the parameters ask for in one community.
@@ -129,11 +152,11 @@ std::vector<BothEnds> differentiate_all(const Solution& solution, std::span<cons
                                         const Execution& execution) {
   const std::vector<Community>& communities = solution.study->communities;
   std::vector<BothEnds> all(communities.size());
-  run_tasks(static_cast<std::int64_t>(all.size()), execution, [&](std::int64_t c, const StopFlag& stop) {
+  run_until_stopped(all.size(), execution, [&](std::size_t c, const StopFlag& stop) {
     const std::vector<CommonShift> shifts = shifts_in(communities[c], parameters);
-    all[c] = differentiate_community(solution, static_cast<int>(c),
-                                     members ? std::span<const CommonShift>(shifts) : std::span<const CommonShift>(),
-                                     stop);
+    all[c] =
+        differentiate_community(solution, static_cast<int>(c),
+                                members ? std::span<const CommonShift>(shifts) : std::span<const CommonShift>(), stop);
     for (EndFound& end : all[c].end) end.gradient.laws = {};
   });
   return all;
@@ -269,7 +292,7 @@ Table link_sensitivity_table(const Solution& solution, const Execution& executio
   LinkRows rows(first.back());
   std::vector<Text> status[ends];
   for (auto& column : status) column.resize(first.back());
-  run_tasks(static_cast<std::int64_t>(study.communities.size()), execution, [&](std::int64_t c, const StopFlag& stop) {
+  run_until_stopped(study.communities.size(), execution, [&](std::size_t c, const StopFlag& stop) {
     fill_precision(make_knowledge(study, solution.beliefs, static_cast<int>(c)), first[c], rows);
     const BothEnds both = differentiate_community(
         solution, static_cast<int>(c), {}, stop,

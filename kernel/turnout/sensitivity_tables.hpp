@@ -10,7 +10,7 @@
 
 namespace folkmote {
 
-/// The largest community whose derivatives are taken: all its pairs are held.
+/// The largest community whose pairs are all held, which candidate links need.
 inline constexpr int most_differentiated = 2000;
 
 /// The most candidate links of a study that one table lists.

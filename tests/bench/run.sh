@@ -17,3 +17,4 @@ echo "a full solve of 2,000 members, both ends to 1e-10, one thread: seconds, an
 } | awk '$1 == "folkmote" { ours = $2 } NF == 2 { printf "%-9s %10.3f s %8.0f x\n", $1, $2, $2 / ours } NF > 2'
 
 "$build/tests/bench/bench_engine" "${1:-100000}"
+"$build/tests/bench/bench_sensitivity"

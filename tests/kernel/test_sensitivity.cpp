@@ -4,6 +4,8 @@
 #include <functional>
 #include <map>
 
+#include "equilibrium/dense_slopes.hpp"
+#include "equilibrium/wide_slopes.hpp"
 #include "slow_game.hpp"
 #include "small_studies.hpp"
 #include "turnout/sensitivity_tables.hpp"
@@ -65,8 +67,9 @@ void agree(double found, double expected) {
   CHECK(std::fabs(found - expected) < 1e-6 * std::max(1.0, std::fabs(expected)));
 }
 
-/// Small against what moves: stakes come down to 0.015.
-double step_of(const slow::Game& game, const std::string& parameter) {
+/// Small against what moves: stakes come down to 0.015, and where a signal begins everything bends.
+double step_of(const slow::Game& game, const std::string& parameter, int side) {
+  if (side != 0) return 1e-4;
   if (parameter != "stake_sd") return 1e-3;
   return 1e-2 * *std::min_element(game.sigma.begin(), game.sigma.end());
 }
@@ -80,7 +83,7 @@ struct Ends {
 
 TEST_CASE("random mixed communities: every derivative agrees with central differences", "[sensitivity]") {
   int several = 0, compared = 0;
-  for (std::uint64_t seed = 0; seed < 24; ++seed) {
+  for (std::uint64_t seed = 0; seed < 60; ++seed) {
     studies::Mixed made = studies::mixed(seed, seed % 4 == 0 ? 0.3 : 1.0);
     if (seed % 4 == 0) made.beliefs.prior_precision = {60.0};
     const Solution solution = studies::solved(made.study, made.beliefs, made.payoff);
@@ -104,7 +107,7 @@ TEST_CASE("random mixed communities: every derivative agrees with central differ
           return slow::solve(moved(game, parameter, broadcast, -1, by), end.cutoffs);
         };
         const int side = side_of(game, parameter, -1);
-        const double step = step_of(game, parameter);
+        const double step = step_of(game, parameter, side);
         agree(reals(community, "turnout_" + end.name)[row],
               slow::derivative([&](double by) { return answer(by).turnout; }, step, side));
         const int i = static_cast<int>(numbers.bits() % static_cast<unsigned>(n));
@@ -121,7 +124,7 @@ TEST_CASE("random mixed communities: every derivative agrees with central differ
         agree(own,
               slow::derivative(
                   [&](double by) { return slow::solve(moved(game, parameter, broadcast, i, by), end.cutoffs).turnout; },
-                  step, side_of(game, parameter, i)));
+                  step_of(game, parameter, side_of(game, parameter, i)), side_of(game, parameter, i)));
         compared += 4;
       }
       for (int sample = 0; sample < 8; ++sample) {
@@ -247,12 +250,39 @@ TEST_CASE("both ends have their own derivatives where there are several equilibr
   CHECK(reals(table, "turnout_least")[0] != reals(table, "turnout_greatest")[0]);
 }
 
-TEST_CASE("candidate links that are too many to list are refused with their number", "[sensitivity]") {
-  const Solution solution =
-      studies::solved(studies::one_community(2500), studies::beliefs(0.3, 1.0, 1.0, 0.5), {}, {1e-6, 100});
+TEST_CASE("a large community: whole solutions apart, and candidate links refused with their number", "[sensitivity]") {
+  drawn::Numbers numbers(9);
+  const auto study = studies::one_community(2500, studies::preferential(2500, 3, numbers), true);
+  const auto at = [&](double cost, double alpha, double beta) {
+    Payoff payoff;
+    payoff.cost = {cost};
+    return studies::solved(study, studies::beliefs(0.3, alpha, beta, 0.2), payoff, {1e-11, 100000});
+  };
+  const Solution solution = at(0.1, 1.0, 2.0);
+  const Table table = sensitivity_table(
+      solution, std::vector{Sensitive::cost, Sensitive::prior_precision, Sensitive::signal_precision}, {});
+  REQUIRE(*texts(table, "status_least")[0] == "solved");
+  const auto turnout = [&](double cost, double alpha, double beta) {
+    return reals(community_table(at(cost, alpha, beta)), "turnout_greatest")[0];
+  };
+  const std::vector<double>& found = reals(table, "turnout_greatest");
+  CHECK(std::fabs(found[0] - slow::derivative([&](double h) { return turnout(0.1 + h, 1.0, 2.0); }, 1e-2)) < 1e-6);
+  CHECK(std::fabs(found[1] - slow::derivative([&](double h) { return turnout(0.1, 1.0 + h, 2.0); }, 1e-2)) < 1e-6);
+  CHECK(std::fabs(found[2] - slow::derivative([&](double h) { return turnout(0.1, 1.0, 2.0 + h); }, 1e-2)) < 1e-6);
   CHECK_THROWS_WITH(link_sensitivity_table(solution, {}), Catch::Contains("2500") && Catch::Contains("2000"));
-  const Table table = sensitivity_table(solution, std::vector{Sensitive::cost}, {});
-  CHECK(*texts(table, "status_least")[0] == "too large");
+}
+
+TEST_CASE("more pairs than can be held are refused", "[sensitivity]") {
+  std::vector<int> everybody(7100);
+  for (int i = 0; i < 7100; ++i) everybody[i] = i;
+  Table broadcasts = studies::group_table("broadcast", {everybody});
+  broadcasts.add("precision", std::vector<double>(7100, 1.0));
+  const Table members = studies::member_table(7100);
+  const auto study =
+      std::make_shared<const Study>(make_study({members, nullptr, &broadcasts, nullptr, nullptr, false}));
+  const Table table =
+      sensitivity_table(studies::solved(study, studies::beliefs(0.3, 1.0, 1.0, 0.5)), std::vector{Sensitive::cost}, {});
+  CHECK(*texts(table, "status_least")[0] == "too many pairs");
   CHECK(std::isnan(reals(table, "turnout_least")[0]));
 }
 
@@ -261,4 +291,73 @@ TEST_CASE("derivatives do not depend on the number of threads", "[sensitivity]")
   const Solution solution = studies::solved(made.study, made.beliefs, made.payoff);
   CHECK(sensitivity_table(solution, all, {1, {}}).digest() == sensitivity_table(solution, all, {3, {}}).digest());
   CHECK(link_sensitivity_table(solution, {1, {}}).digest() == link_sensitivity_table(solution, {3, {}}).digest());
+}
+
+namespace {
+
+/// Every derivative of one end by both ways of counting; the largest difference, relative where above 1.
+double largest_difference(EndSensitivity& one, EndSensitivity& other, const Community& community) {
+  REQUIRE(one.status() == other.status());
+  if (one.status() != EndStatus::solved) return 0.0;
+  double largest = 0.0;
+  const auto compare = [&](double a, double b) {
+    largest = std::max(largest, std::fabs(a - b) / std::max(1.0, std::fabs(a)));
+  };
+  const TurnoutGradient dense = one.turnout_gradient(), wide = other.turnout_gradient();
+  for (Sensitive parameter : all) {
+    const bool of_broadcasts = parameter == Sensitive::broadcast_precision;
+    for (int q = 0; q < (of_broadcasts ? static_cast<int>(community.broadcasts.size()) : 1); ++q) {
+      const CommonShift shift{parameter, of_broadcasts ? q : -1};
+      compare(dense.total(shift), wide.total(shift));
+      const MemberSlopes a = one.member_slopes(shift), b = other.member_slopes(shift);
+      for (std::size_t i = 0; i < a.cutoff.size(); ++i) {
+        compare(a.cutoff[i], b.cutoff[i]);
+        compare(a.chance[i], b.chance[i]);
+      }
+      const auto own = dense.own(parameter), theirs = wide.own(parameter);
+      REQUIRE(own.size() == theirs.size());
+      for (std::size_t i = 0; i < own.size(); ++i) compare(own[i], theirs[i]);
+    }
+  }
+  return largest;
+}
+
+double dense_against_wide(const Solution& solution) {
+  const Knowledge knowledge = make_knowledge(*solution.study, solution.beliefs, 0);
+  const SharedInformation shared(knowledge);
+  const Stakes stakes = make_stakes(*solution.study, solution.payoff, 0);
+  const InformationSlopes slopes(knowledge);
+  ShareRows rows(knowledge, shared, stakes);
+  double largest = 0.0;
+  for (const auto& cutoffs : {solution.enclosures[0].least, solution.enclosures[0].greatest}) {
+    DenseSlopes dense(knowledge, shared, slopes, rows, nullptr);
+    WideSlopes wide(knowledge, slopes, stakes, nullptr);
+    EndSensitivity one(knowledge, slopes, dense, stakes.weight, cutoffs, 1e-9);
+    EndSensitivity other(knowledge, slopes, wide, stakes.weight, cutoffs, 1e-9);
+    largest = std::max(largest, largest_difference(one, other, solution.study->communities[0]));
+  }
+  return largest;
+}
+
+}  // namespace
+
+TEST_CASE("by the grid of theta as over all pairs", "[sensitivity]") {
+  for (std::uint64_t seed = 200; seed < 240; ++seed) {
+    studies::Mixed made = studies::mixed(seed, seed % 2 == 0 ? 0.3 : 1.0);
+    CAPTURE(seed);
+    CHECK(dense_against_wide(studies::solved(made.study, made.beliefs, made.payoff)) < 1e-9);
+  }
+  drawn::Numbers numbers(5);
+  const auto study = studies::one_community(400, studies::preferential(400, 3, numbers), true);
+  CHECK(dense_against_wide(studies::solved(study, studies::beliefs(0.4, 1.0, 2.0, 0.1))) < 1e-9);
+  // Nobody has a stake of its own, and some know much more than others.
+  Beliefs uneven = studies::beliefs(0.4, 1.0, 2.0);
+  uneven.signal_precision.assign(400, 0.02);
+  for (int i = 0; i < 400; i += 7) uneven.signal_precision[i] = 60.0;
+  CHECK(dense_against_wide(studies::solved(study, uneven)) < 1e-9);
+  Payoff some;
+  some.benefit.assign(400, 1.0);
+  for (int i = 0; i < 400; i += 5) some.benefit[i] = 0.0;
+  some.reach = {0.4};
+  CHECK(dense_against_wide(studies::solved(study, uneven, some)) < 1e-9);
 }

@@ -21,7 +21,8 @@ come from a column; exact relays stay exact; who is in whose reach stays as it i
 Columns: `community`, `parameter` (a symbol), `broadcast` (its number in the community, from 1; `missing` for other
 parameters), `turnout_least`, `turnout_greatest` (derivatives of expected turnout, per unit of the parameter), `status_least`,
 `status_greatest`. A status is `:solved`, or says why there is only `NaN`: `Symbol("near a tangency")` (two equilibria meet there),
-`Symbol("a gain jumps")`, `Symbol("not converged")`, `Symbol("too large")` (above 2,000 members).
+`Symbol("a gain jumps")`, `Symbol("not converged")`, `Symbol("too many pairs")` (above 2,000 members, of whom more than 50 million
+ordered pairs share information; an audience of 7,000 is about as many).
 
 `level = :member`: `community`, `member`, `parameter`, `broadcast`, `cutoff_least`, `cutoff_greatest`, `chance_least`,
 `chance_greatest` (of the member's cutoff and chance when the whole community's values move), `turnout_own_least`,
