@@ -30,14 +30,6 @@ double poisson_binomial_tail(std::span<const double> chance, int needed) {
   return reached;
 }
 
-/// The smallest number of members whose share is at least the threshold: A >= q in doubles, as a play decides it.
-int members_needed(int size, double threshold) {
-  int needed = static_cast<int>(std::floor(threshold * size));
-  while (needed > 0 && static_cast<double>(needed - 1) / size >= threshold) --needed;
-  while (needed <= size && static_cast<double>(needed) / size < threshold) ++needed;
-  return needed;
-}
-
 /// Integral of f over [low, high] by 10-point Gauss-Legendre panels, halved until both halves agree with the whole.
 template <class F>
 double adaptive_integral(const F& f, const QuadratureRule& rule, double low, double high, double whole, double error,
@@ -58,6 +50,13 @@ double adaptive_integral(const F& f, const QuadratureRule& rule, double low, dou
 }
 
 }  // namespace
+
+int members_needed(int size, double threshold) {
+  int needed = static_cast<int>(std::floor(threshold * size));
+  while (needed > 0 && static_cast<double>(needed - 1) / size >= threshold) --needed;
+  while (needed <= size && static_cast<double>(needed) / size < threshold) ++needed;
+  return needed;
+}
 
 bool chance_is_exact(const SharedInformation& shared, std::span<const double> weights) {
   const bool equal = std::all_of(weights.begin(), weights.end(), [&](double w) { return w == weights[0]; });

@@ -8,6 +8,9 @@
 
 namespace folkmote {
 
+/// The smallest number of members whose share is at least the threshold: A >= q in doubles, as a play decides it.
+int members_needed(int size, double threshold);
+
 /// Whether P(A >= q) is computed exactly: no shared information, equal weights, at most 500 members.
 bool chance_is_exact(const SharedInformation& shared, std::span<const double> weights);
 

@@ -2,9 +2,11 @@
 
 #include <algorithm>
 #include <cmath>
+#include <functional>
 
 #include "community/columns.hpp"
 #include "turnout/chance.hpp"
+#include "turnout/large_turnout.hpp"
 #include "turnout/moments.hpp"
 
 namespace folkmote {
@@ -100,33 +102,53 @@ struct TurnoutRows {
 /// A value of theta, or none.
 using Condition = std::optional<double>;
 
-void fill_community(const Solution& solution, int c, std::span<const Condition> conditions,
-                    std::span<const double> at_least, std::size_t row, TurnoutRows& rows) {
-  const Study& study = *solution.study;
-  const Knowledge knowledge = make_knowledge(study, solution.beliefs, c);
-  const SharedInformation shared(knowledge);
-  const std::vector<double>& weights = study.communities[c].values.weight;
-  const Enclosure& found = solution.enclosures[c];
+/// One community's moments and chances, by the dense form or the sparse one.
+struct Answers {
+  std::function<Moments(std::span<const double> cutoffs, const Condition&)> moments;
+  std::function<double(std::span<const double> cutoffs, double threshold, const Condition&)> chance;
+  bool exact;
+};
+
+Answers dense_answers(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights) {
+  return {[&, weights](std::span<const double> cutoffs, const Condition& condition) {
+            return condition ? turnout_given(knowledge, shared, weights, cutoffs, *condition)
+                             : turnout_moments(knowledge, shared, weights, cutoffs);
+          },
+          [&, weights](std::span<const double> cutoffs, double threshold, const Condition& condition) {
+            return condition ? chance_at_least_given(knowledge, shared, weights, cutoffs, threshold, *condition)
+                             : chance_at_least(knowledge, shared, weights, cutoffs, threshold);
+          },
+          chance_is_exact(shared, weights)};
+}
+
+Answers sparse_answers(const LargeTurnout& large) {
+  return {[&](std::span<const double> cutoffs, const Condition& condition) {
+            return condition ? large.moments_given(cutoffs, *condition) : large.moments(cutoffs);
+          },
+          [&](std::span<const double> cutoffs, double threshold, const Condition& condition) {
+            return condition ? large.chance_given(cutoffs, threshold, *condition) : large.chance(cutoffs, threshold);
+          },
+          false};
+}
+
+void fill_rows(const Answers& answers, const Enclosure& found, std::span<const Condition> conditions,
+               std::span<const double> at_least, std::size_t row, TurnoutRows& rows) {
   const std::size_t thresholds = std::max<std::size_t>(at_least.size(), 1);
   for (const Condition& condition : conditions) {
     for (int end = 0; end < 2; ++end) {
       const std::vector<double>& cutoffs = end == 0 ? found.least : found.greatest;
-      const Moments moments = condition ? turnout_given(knowledge, shared, weights, cutoffs, *condition)
-                                        : turnout_moments(knowledge, shared, weights, cutoffs);
+      const Moments moments = answers.moments(cutoffs, condition);
       for (std::size_t q = 0; q < thresholds; ++q) {
         rows.mean[end][row + q] = moments.mean;
         rows.sd[end][row + q] = moments.sd;
-        if (at_least.empty()) continue;
-        rows.chance[end][row + q] =
-            condition ? chance_at_least_given(knowledge, shared, weights, cutoffs, at_least[q], *condition)
-                      : chance_at_least(knowledge, shared, weights, cutoffs, at_least[q]);
+        if (!at_least.empty()) rows.chance[end][row + q] = answers.chance(cutoffs, at_least[q], condition);
       }
     }
     for (std::size_t q = 0; q < thresholds; ++q, ++row) {
       if (condition) rows.given[row] = *condition;
       if (at_least.empty()) continue;
       rows.at_least[row] = at_least[q];
-      rows.method[row] = chance_is_exact(shared, weights) ? "exact" : "normal approximation";
+      rows.method[row] = answers.exact ? "exact" : "normal approximation";
     }
   }
 }
@@ -140,9 +162,22 @@ Table turnout_table(const Solution& solution, std::span<const double> given, std
   if (conditions.empty()) conditions.push_back(std::nullopt);
   const std::size_t each = conditions.size() * std::max<std::size_t>(at_least.size(), 1);
   TurnoutRows rows(communities * each);
+  const Study& study = *solution.study;
+  const auto fill = [&](std::int64_t c, const Answers& answers) {
+    fill_rows(answers, solution.enclosures[c], conditions, at_least, static_cast<std::size_t>(c) * each, rows);
+  };
   run_tasks(static_cast<std::int64_t>(communities), execution, [&](std::int64_t c, const StopFlag&) {
-    fill_community(solution, static_cast<int>(c), conditions, at_least, static_cast<std::size_t>(c) * each, rows);
+    if (is_large_for_turnout(study.communities[c].size)) return;
+    const Knowledge knowledge = make_knowledge(study, solution.beliefs, static_cast<int>(c));
+    const SharedInformation shared(knowledge);
+    fill(c, dense_answers(knowledge, shared, study.communities[c].values.weight));
   });
+  // Large communities one after the other, each split over the workers.
+  for (std::size_t c = 0; c < communities; ++c) {
+    if (!is_large_for_turnout(study.communities[c].size)) continue;
+    const Knowledge knowledge = make_knowledge(study, solution.beliefs, static_cast<int>(c));
+    fill(static_cast<std::int64_t>(c), sparse_answers({knowledge, study.communities[c].values.weight, execution}));
+  }
   Table table(communities * each);
   table.add("community",
             take_rows(solution.study->roster->community_labels,
