@@ -14,6 +14,7 @@
 #include "random/digest.hpp"
 #include "reference_table.hpp"
 #include "small_studies.hpp"
+#include "turnout/sensitivity_tables.hpp"
 #include "turnout/tables.hpp"
 
 using namespace folkmote;
@@ -27,7 +28,9 @@ std::string hex(std::uint64_t value) {
 }
 
 std::map<std::string, std::string> digests_now(int threads) {
-  Digest cutoffs, verdicts, turnout, plays, counterfactuals;
+  Digest cutoffs, verdicts, turnout, plays, counterfactuals, derivatives;
+  const std::vector<Sensitive> levers{Sensitive::prior_precision, Sensitive::signal_precision,
+                                      Sensitive::relay_precision, Sensitive::stake_sd, Sensitive::broadcast_precision};
   const Execution execution{threads, {}};
   for (std::uint64_t seed = 0; seed < 200; ++seed) {
     const studies::Mixed made = studies::mixed(seed, seed % 4 == 0 ? 0.1 : 1.0);
@@ -39,6 +42,8 @@ std::map<std::string, std::string> digests_now(int threads) {
     const double given[] = {0.2, 0.6}, at_least[] = {0.5};
     turnout.add(turnout_table(solution, given, at_least, execution).digest());
     plays.add(action_table(solution, {3, 20, seed, std::nullopt}, execution).digest());
+    derivatives.add(member_sensitivity_table(solution, levers, execution).digest());
+    derivatives.add(link_sensitivity_table(solution, execution).digest());
     Scenario scenario(made.study);
     scenario.thin_links(0.2, seed);
     scenario.broadcast(nullptr, 2.0);
@@ -55,9 +60,18 @@ std::map<std::string, std::string> digests_now(int threads) {
     const Solution solution = solve(study, studies::beliefs(0.4, 1.0, 2.0, sigma), payoff, {}, execution);
     large.add(std::span<const double>(solution.enclosures[0].least)).add(solution.enclosures[0].contraction_bound);
   }
-  return {{"cutoffs", hex(cutoffs.value())},   {"large", hex(large.value())},
-          {"verdicts", hex(verdicts.value())}, {"turnout", hex(turnout.value())},
-          {"plays", hex(plays.value())},       {"counterfactuals", hex(counterfactuals.value())}};
+  // Large enough for derivatives by the grid.
+  drawn::Numbers numbers(11);
+  const auto study = studies::one_community(2100, studies::preferential(2100, 3, numbers), true);
+  const Solution solution = solve(study, studies::beliefs(0.4, 1.0, 2.0, 0.2), {}, {}, execution);
+  derivatives.add(member_sensitivity_table(solution, levers, execution).digest());
+  return {{"derivatives", hex(derivatives.value())},
+          {"cutoffs", hex(cutoffs.value())},
+          {"large", hex(large.value())},
+          {"verdicts", hex(verdicts.value())},
+          {"turnout", hex(turnout.value())},
+          {"plays", hex(plays.value())},
+          {"counterfactuals", hex(counterfactuals.value())}};
 }
 
 std::map<std::string, std::string> digests_kept() {
