@@ -11,6 +11,7 @@ build=${FOLKMOTE_BUILD:-$here/build}
 main_packages=(g++ cmake ninja-build libboost-dev libeigen3-dev libpcg-cpp-dev
   r-base-core r-base-dev libboost-tools-dev librsvg2-bin)
 test_packages=(clang clang-format catch2 g++-aarch64-linux-gnu qemu-user pkg-config file binutils
+  r-cran-future r-cran-future.batchtools r-cran-batchtools r-cran-progressr slurmctld slurmd slurm-client munge
   r-cran-testthat r-cran-tibble r-cran-mvtnorm r-cran-pbivnorm r-cran-igraph r-cran-matrix r-cran-spdata r-cran-ggraph)
 main_commands=(g++ cmake ninja R Rscript julia)
 

@@ -37,6 +37,9 @@ folkmote_status guard(char* message, const Call& call) noexcept {
   } catch (const BadArgument& fault) {
     write_message(message, fault.what());
     return FOLKMOTE_BAD_ARGUMENT;
+  } catch (const BadFile& fault) {
+    write_message(message, fault.what());
+    return FOLKMOTE_BAD_FILE;
   } catch (const Cancelled& fault) {
     write_message(message, fault.what());
     return FOLKMOTE_CANCELLED;

@@ -5,6 +5,7 @@
 #include <memory>
 
 #include "capi_count.hpp"
+#include "counterfactual/paired.hpp"
 #include "counterfactual/scenario.hpp"
 #include "equilibrium/solution.hpp"
 #include "folkmote.h"
@@ -30,6 +31,7 @@ struct folkmote_payoff : folkmote::CountedHandle {
 struct folkmote_options : folkmote::CountedHandle {
   folkmote::SolveRule rule;
   folkmote::Execution execution;
+  folkmote::Estimator estimator;
 };
 
 struct folkmote_equilibrium : folkmote::CountedHandle {

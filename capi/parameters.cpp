@@ -84,9 +84,9 @@ struct OptionRule {
 };
 
 constexpr OptionRule option_rules[] = {
-    {FOLKMOTE_TOLERANCE, "tolerance", 1e-13, 1.0, false},
-    {FOLKMOTE_SWEEPS, "sweeps", 1.0, 1e9, true},
-    {FOLKMOTE_THREADS, "threads", 1.0, 1024.0, true},
+    {FOLKMOTE_TOLERANCE, "tolerance", 1e-13, 1.0, false},  {FOLKMOTE_SWEEPS, "sweeps", 1.0, 1e9, true},
+    {FOLKMOTE_THREADS, "threads", 1.0, 1024.0, true},      {FOLKMOTE_COMMON_DRAWS, "common draws", 0.0, 1.0, true},
+    {FOLKMOTE_OVER_STAKES, "over stakes", 0.0, 1.0, true}, {FOLKMOTE_CONTROL, "control", 0.0, 1.0, true},
 };
 
 const OptionRule& option_rule(int option) {
@@ -120,6 +120,9 @@ folkmote_status folkmote_options_set(folkmote_options* options, int option, doub
     if (option == FOLKMOTE_TOLERANCE) options->rule.tolerance = value;
     if (option == FOLKMOTE_SWEEPS) options->rule.sweeps = static_cast<int64_t>(value);
     if (option == FOLKMOTE_THREADS) options->execution.threads = static_cast<int>(value);
+    if (option == FOLKMOTE_COMMON_DRAWS) options->estimator.common_draws = value != 0.0;
+    if (option == FOLKMOTE_OVER_STAKES) options->estimator.over_stakes = value != 0.0;
+    if (option == FOLKMOTE_CONTROL) options->estimator.control = value != 0.0;
   });
 }
 

@@ -7,19 +7,21 @@
 #include "counterfactual/prospective.hpp"
 #include "guard.hpp"
 #include "handles.hpp"
+#include "plays.hpp"
 #include "turnout/tables.hpp"
 
+using folkmote::check_draws;
+using folkmote::check_level;
+using folkmote::estimator_of;
+using folkmote::execution_of;
 using folkmote::guard;
 using folkmote::needed;
+using folkmote::read_condition;
 
 namespace {
 
 folkmote::SolveRule rule_of(const folkmote_options* options) {
   return options == nullptr ? folkmote::SolveRule{} : options->rule;
-}
-
-folkmote::Execution execution_of(const folkmote_options* options) {
-  return options == nullptr ? folkmote::Execution{} : options->execution;
 }
 
 std::span<const double> read_array(int64_t count, const double* values, const char* name) {
@@ -35,24 +37,6 @@ void check_each(std::span<const double> values, const char* name, double low, do
     throw folkmote::BadArgument(std::string(name) + " holds " + folkmote::plain_number(value) + "; give numbers from " +
                                 folkmote::plain_number(low) + " to " + folkmote::plain_number(high) + ".");
   }
-}
-
-void check_level(int level) {
-  if (level == FOLKMOTE_BY_COMMUNITY || level == FOLKMOTE_BY_MEMBER) return;
-  throw folkmote::BadArgument("there is no level " + std::to_string(level) + "; see folkmote_level.");
-}
-
-constexpr int64_t most = std::numeric_limits<int64_t>::max();
-
-/// Every play has a number, and so has every row of a table with `rows_per_draw` rows for each of them.
-void check_draws(int64_t first_draw, int64_t draws, std::size_t rows_per_draw) {
-  if (first_draw < 0)
-    throw folkmote::BadArgument("first_draw is " + std::to_string(first_draw) + "; it must be at least 0.");
-  if (draws < 1) throw folkmote::BadArgument("draws is " + std::to_string(draws) + "; it must be at least 1.");
-  if (first_draw > most - draws) {
-    throw folkmote::BadArgument("first_draw + draws is above 2^63 - 1; plays cannot be numbered that far.");
-  }
-  if (draws > most / static_cast<int64_t>(rows_per_draw)) throw std::length_error("rows of the plays");
 }
 
 constexpr double largest = std::numeric_limits<double>::max();
@@ -101,36 +85,78 @@ folkmote_status folkmote_turnout(const folkmote_equilibrium* equilibrium, int64_
   });
 }
 
+namespace {
+
+folkmote::Table plays_of(const folkmote::Solution& solution, const folkmote::PlayRange& range, int level,
+                         const folkmote_options* options) {
+  folkmote::check_plays(solution, range.first, range.count, level);
+  return level == FOLKMOTE_BY_MEMBER ? folkmote::action_table(solution, range, execution_of(options))
+                                     : folkmote::play_table(solution, range, execution_of(options));
+}
+
+void check_compared(int64_t draws) {
+  if (draws < 0 || draws == 1) {
+    throw folkmote::BadArgument("draws is " + std::to_string(draws) + "; give 0 for none, or at least 2.");
+  }
+}
+
+}  // namespace
+
 folkmote_status folkmote_simulate(const folkmote_equilibrium* equilibrium, int64_t first_draw, int64_t draws,
                                   uint64_t seed, const double* given, int level, const folkmote_options* options,
                                   folkmote_table** table, char* message) {
   return guard(message, [&] {
     *needed(table, "table") = nullptr;
-    check_level(level);
-    const folkmote::Solution& solution = needed(equilibrium, "equilibrium")->solution;
-    const folkmote::Study& played = *solution.study;
-    check_draws(first_draw, draws, level == FOLKMOTE_BY_MEMBER ? played.roster->members() : played.communities.size());
-    folkmote::PlayRange range{first_draw, draws, seed, std::nullopt};
+    folkmote::PlayRange range{first_draw, draws, seed, {}};
     if (given != nullptr) {
       check_each({given, 1}, "given", -largest, largest);
-      range.given = *given;
+      range.condition = {*given, *given};
     }
-    *table =
-        new folkmote_table(level == FOLKMOTE_BY_MEMBER ? folkmote::action_table(solution, range, execution_of(options))
-                                                       : folkmote::play_table(solution, range, execution_of(options)));
+    *table = new folkmote_table(plays_of(needed(equilibrium, "equilibrium")->solution, range, level, options));
+  });
+}
+
+folkmote_status folkmote_simulate_within(const folkmote_equilibrium* equilibrium, int64_t first_draw, int64_t draws,
+                                         uint64_t seed, double low, double high, int level,
+                                         const folkmote_options* options, folkmote_table** table, char* message) {
+  return guard(message, [&] {
+    *needed(table, "table") = nullptr;
+    const folkmote::PlayRange range{first_draw, draws, seed, read_condition(low, high)};
+    *table = new folkmote_table(plays_of(needed(equilibrium, "equilibrium")->solution, range, level, options));
   });
 }
 
 folkmote_status folkmote_counterfactual(const folkmote_equilibrium* equilibrium, const folkmote_scenario* scenario,
                                         int64_t draws, uint64_t seed, const folkmote_options* options,
                                         folkmote_table** table, char* message) {
+  constexpr double open = std::numeric_limits<double>::infinity();
+  return folkmote_counterfactual_within(equilibrium, scenario, draws, seed, -open, open, options, table, message);
+}
+
+folkmote_status folkmote_counterfactual_within(const folkmote_equilibrium* equilibrium,
+                                               const folkmote_scenario* scenario, int64_t draws, uint64_t seed,
+                                               double low, double high, const folkmote_options* options,
+                                               folkmote_table** table, char* message) {
   return guard(message, [&] {
     *needed(table, "table") = nullptr;
-    if (draws < 0 || draws == 1) {
-      throw folkmote::BadArgument("draws is " + std::to_string(draws) + "; give 0 for none, or at least 2.");
-    }
+    check_compared(draws);
+    const folkmote::PlayRange range{0, draws, seed, read_condition(low, high)};
     *table = new folkmote_table(folkmote::counterfactual_table(needed(equilibrium, "equilibrium")->solution,
-                                                               needed(scenario, "scenario")->scenario, draws, seed,
-                                                               execution_of(options)));
+                                                               needed(scenario, "scenario")->scenario, range,
+                                                               estimator_of(options), execution_of(options)));
+  });
+}
+
+folkmote_status folkmote_counterfactual_plays(const folkmote_equilibrium* equilibrium,
+                                              const folkmote_scenario* scenario, int64_t first_draw, int64_t draws,
+                                              uint64_t seed, double low, double high, const folkmote_options* options,
+                                              folkmote_table** table, char* message) {
+  return guard(message, [&] {
+    *needed(table, "table") = nullptr;
+    const folkmote::Solution& solution = needed(equilibrium, "equilibrium")->solution;
+    check_draws(first_draw, draws, solution.study->communities.size());
+    const folkmote::PlayRange range{first_draw, draws, seed, read_condition(low, high)};
+    *table = new folkmote_table(folkmote::paired_table(solution, needed(scenario, "scenario")->scenario, range,
+                                                       estimator_of(options), execution_of(options)));
   });
 }

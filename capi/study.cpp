@@ -46,6 +46,10 @@ folkmote_status folkmote_study_summary(const folkmote_study* study, folkmote_tab
   });
 }
 
+uint64_t folkmote_study_digest(const folkmote_study* study) {
+  return study == nullptr ? 0 : folkmote::guard_digest([&] { return study->study->digest(); });
+}
+
 folkmote_status folkmote_scenario_create(const folkmote_study* study, folkmote_scenario** scenario, char* message) {
   return guard(message, [&] {
     *needed(scenario, "scenario") = nullptr;

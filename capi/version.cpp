@@ -30,6 +30,8 @@ const char* folkmote_status_name(int status) {
       return "FOLKMOTE_OUT_OF_MEMORY";
     case FOLKMOTE_CANCELLED:
       return "FOLKMOTE_CANCELLED";
+    case FOLKMOTE_BAD_FILE:
+      return "FOLKMOTE_BAD_FILE";
     case FOLKMOTE_INTERNAL:
       return "FOLKMOTE_INTERNAL";
     default:
@@ -49,6 +51,8 @@ const char* folkmote_status_text(int status) {
       return "there is not enough memory";
     case FOLKMOTE_CANCELLED:
       return "the run was cancelled by the caller";
+    case FOLKMOTE_BAD_FILE:
+      return "a file cannot be read or written, or is not what it should be";
     case FOLKMOTE_INTERNAL:
       return "a defect of the library";
     default:

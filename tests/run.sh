@@ -1,6 +1,6 @@
 #!/usr/bin/env bash
 # All tests: C++, C, R, Julia, and the agreement between the languages. Installs what it needs on Debian 12.
-# Usage: tests/run.sh [--setup-only] [--skip-setup] [room ...]   rooms: format kernel capi r julia agreement bits
+# Usage: tests/run.sh [--setup-only] [--skip-setup] [room ...]   rooms: format kernel capi r julia agreement cluster bits
 set -uo pipefail
 cd "$(dirname "${BASH_SOURCE[0]}")/.."
 root=$PWD
@@ -19,7 +19,7 @@ for argument in "$@"; do
     *) rooms+=("$argument") ;;
   esac
 done
-[ ${#rooms[@]} -gt 0 ] || rooms=(format kernel capi r julia agreement bits)
+[ ${#rooms[@]} -gt 0 ] || rooms=(format kernel capi r julia agreement cluster bits)
 
 if [ "$setup" = yes ]; then .ci/setup.sh tests || exit 1; fi
 [ "$only" = no ] || exit 0
@@ -89,7 +89,7 @@ if ! build >"$FOLKMOTE_BUILD/build.log" 2>&1; then
   echo "0 passed, 1 failed"
   exit 1
 fi
-if [[ " ${rooms[*]} " =~ " r " || " ${rooms[*]} " =~ " agreement " ]] && ! r_package >"$FOLKMOTE_BUILD/r-package.log" 2>&1; then
+if [[ " ${rooms[*]} " =~ " r " || " ${rooms[*]} " =~ " agreement " || " ${rooms[*]} " =~ " cluster " ]] && ! r_package >"$FOLKMOTE_BUILD/r-package.log" 2>&1; then
   tail -n 40 "$FOLKMOTE_BUILD/r-package.log"
   echo "the R package did not install; its tests will say so"
 fi
@@ -102,6 +102,7 @@ for name in "${rooms[@]}"; do
     r) room R Rscript tests/r/run.R ;;
     julia) room Julia .ci/julia.sh --project=wrappers_julia tests/julia/runtests.jl ;;
     agreement) room agreement tests/agreement/run.sh ;;
+    cluster) room cluster tests/cluster/run.sh ;;
     bits) room bits tests/bits/run.sh ;;
     *) echo "there is no room of tests called $name" && failed=$((failed + 1)) ;;
   esac

@@ -110,6 +110,7 @@ typedef enum folkmote_status {
   FOLKMOTE_BAD_DATA = 2,      /* a table breaks a rule; the message names table, column, rows and count */
   FOLKMOTE_OUT_OF_MEMORY = 3, /* nothing was changed; the session goes on */
   FOLKMOTE_CANCELLED = 4,     /* the progress callback asked to stop */
+  FOLKMOTE_BAD_FILE = 5,      /* a file cannot be read or written, or is not what it should be */
   FOLKMOTE_INTERNAL = 9       /* a defect of the library: please report the message */
 } folkmote_status;
 
@@ -206,6 +207,11 @@ FOLKMOTE_API void folkmote_study_destroy(folkmote_study* study);
  *   table  out: the caller destroys it. NULL on failure. */
 FOLKMOTE_API folkmote_status folkmote_study_summary(const folkmote_study* study, folkmote_table** table, char* message);
 
+/* Digest of the checked study: equal for equal members (their ids by value and type, their order, their
+ * columns), links, broadcasts and gatherings, in every language. 0 for NULL, and when there is not enough memory to
+ * compute it. */
+FOLKMOTE_API uint64_t folkmote_study_digest(const folkmote_study* study);
+
 /* ---- Parameters of beliefs and payoff ------------------------------------------------------------------ */
 
 /* Precisions are inverse variances, in 1 / (units of the obstacle)^2. Obstacle, benefit, cost and stakes share
@@ -275,7 +281,12 @@ typedef enum folkmote_option {
   FOLKMOTE_TOLERANCE = 32, /* widest enclosure of a cutoff that counts as found (64 roundings of the largest
                               cutoff, where that is wider); 1e-13..1, default 1e-10 */
   FOLKMOTE_SWEEPS = 33,    /* cap on sweeps and leaps per end; 1..1e9, default 100000 */
-  FOLKMOTE_THREADS = 34    /* worker threads; 1..1024, default 1; never changes a result */
+  FOLKMOTE_THREADS = 34,   /* worker threads; 1..1024, default 1; never changes a result */
+  /* How the simulated mean difference of a counterfactual and its standard error are found; 1 (default) or 0 each.
+   * They change the numbers, not what is estimated. */
+  FOLKMOTE_COMMON_DRAWS = 40, /* baseline and scenario share every draw */
+  FOLKMOTE_OVER_STAKES = 41,  /* chances over the stakes in place of actions (conditional Monte Carlo) */
+  FOLKMOTE_CONTROL = 42       /* the analytic turnout curve as control variate */
 } folkmote_option;
 
 /* Options at their defaults, without progress.
@@ -370,6 +381,14 @@ FOLKMOTE_API folkmote_status folkmote_turnout(const folkmote_equilibrium* equili
 FOLKMOTE_API folkmote_status folkmote_simulate(const folkmote_equilibrium* equilibrium, int64_t first_draw,
                                                int64_t draws, uint64_t seed, const double* given, int level,
                                                const folkmote_options* options, folkmote_table** table, char* message);
+
+/* The same for plays whose obstacle lies in [low, high]: equal ends give its value, infinite ends leave a side open.
+ * The obstacle follows its prior truncated to the range, drawn from the uniform that draws it without a range.
+ * FOLKMOTE_BAD_ARGUMENT where low > high, an end is NaN, or the range has a prior chance below 1e-12. */
+FOLKMOTE_API folkmote_status folkmote_simulate_within(const folkmote_equilibrium* equilibrium, int64_t first_draw,
+                                                      int64_t draws, uint64_t seed, double low, double high, int level,
+                                                      const folkmote_options* options, folkmote_table** table,
+                                                      char* message);
 
 /* ---- Sensitivity --------------------------------------------------------------------------------------- */
 
@@ -494,6 +513,56 @@ FOLKMOTE_API folkmote_status folkmote_counterfactual(const folkmote_equilibrium*
                                                      const folkmote_scenario* scenario, int64_t draws, uint64_t seed,
                                                      const folkmote_options* options, folkmote_table** table,
                                                      char* message);
+
+/* The same given that the obstacle lies in [low, high], as in folkmote_simulate_within: the analytic means too are
+ * those given the range (by quadrature to about 1e-12). Where a scenario changes the prior, each side follows its own.
+ */
+FOLKMOTE_API folkmote_status folkmote_counterfactual_within(const folkmote_equilibrium* equilibrium,
+                                                            const folkmote_scenario* scenario, int64_t draws,
+                                                            uint64_t seed, double low, double high,
+                                                            const folkmote_options* options, folkmote_table** table,
+                                                            char* message);
+
+/* The plays of a counterfactual, replications first_draw .. first_draw + draws - 1 (any split gives the same rows):
+ * community, replication (from 1), obstacle (of the baseline), baseline_least, baseline_greatest, scenario_least,
+ * scenario_greatest (turnout of that play). Range, condition and errors as in folkmote_simulate_within. */
+FOLKMOTE_API folkmote_status folkmote_counterfactual_plays(const folkmote_equilibrium* equilibrium,
+                                                           const folkmote_scenario* scenario, int64_t first_draw,
+                                                           int64_t draws, uint64_t seed, double low, double high,
+                                                           const folkmote_options* options, folkmote_table** table,
+                                                           char* message);
+
+/* ---- Chunks: plays over processes and machines --------------------------------------------------------- */
+
+/* Any split of the replications merges to the bytes of the single run. A chunk file carries library and stream version,
+ * seed, range of draws and a digest of its inputs (equilibrium, scenario, condition, level); it is written under
+ * another name, flushed and renamed, so that a file of its name is whole or absent. */
+
+/* Play replications first_draw .. first_draw + draws - 1 into the file `path`: as folkmote_simulate_within, or, with a
+ * scenario, as folkmote_counterfactual_plays (level FOLKMOTE_BY_COMMUNITY only). A whole file of these very inputs,
+ * draws, seed and versions is left as it is and nothing is computed: run again what was killed.
+ *   scenario  NULL: plays of the equilibrium
+ *   path      of a file in a folder that exists
+ *   computed  out: 1, or 0 when the file was there; may be NULL
+ * FOLKMOTE_BAD_FILE when it cannot be written, or when another file stands there. */
+FOLKMOTE_API folkmote_status folkmote_chunk_run(const folkmote_equilibrium* equilibrium,
+                                                const folkmote_scenario* scenario, int64_t first_draw, int64_t draws,
+                                                uint64_t seed, double low, double high, int level,
+                                                const folkmote_options* options, const char* path, int* computed,
+                                                char* message);
+
+/* Merge the files, in any order, into the table of draws first_draw .. first_draw + draws - 1.
+ * FOLKMOTE_BAD_FILE for a file that is absent or damaged, draws that are missing, stand twice or are not in the range,
+ * and for files that differ in version, stream version, inputs or seed: the message names the file or the draws. paths
+ * `count` >= 1 of them table  out: the very table of the single run, digest included; the caller destroys it. NULL on
+ * failure. */
+FOLKMOTE_API folkmote_status folkmote_chunk_merge(int64_t count, const char* const* paths, int64_t first_draw,
+                                                  int64_t draws, folkmote_table** table, char* message);
+
+/* What stands in the headers, one row per file: file, version, stream_version, inputs (hexadecimal), seed (decimal),
+ * first_draw (from 0), draws, rows. Arguments and errors as above. */
+FOLKMOTE_API folkmote_status folkmote_chunk_table(int64_t count, const char* const* paths, folkmote_table** table,
+                                                  char* message);
 
 #ifdef __cplusplus
 }

@@ -1,5 +1,5 @@
 #pragma once
-// The two ways in which a caller can be wrong. Messages are one sentence: what, where, what to do.
+// The ways in which a caller, or what a caller names, can be wrong. Messages are one sentence: what, where, what to do.
 #include "numerics/strict.hpp"
 
 #include <stdexcept>
@@ -17,6 +17,12 @@ class BadData : public std::runtime_error {
 class BadArgument : public std::runtime_error {
  public:
   explicit BadArgument(const std::string& sentence) : std::runtime_error(sentence) {}
+};
+
+/// A file cannot be read or written, or is not what it should be.
+class BadFile : public std::runtime_error {
+ public:
+  explicit BadFile(const std::string& sentence) : std::runtime_error(sentence) {}
 };
 
 /// The caller's progress callback asked to stop.

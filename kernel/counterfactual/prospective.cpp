@@ -4,10 +4,8 @@
 #include <cmath>
 #include <limits>
 
-#include "community/fault.hpp"
 #include "numerics/sums.hpp"
-#include "turnout/moments.hpp"
-#include "turnout/plays.hpp"
+#include "turnout/play_range.hpp"
 
 namespace folkmote {
 
@@ -19,11 +17,18 @@ constexpr double unknown = std::numeric_limits<double>::quiet_NaN();
 // Communities whose plays are held in memory at once.
 constexpr std::int64_t block = 64;
 
-/// Differences in turnout (scenario less baseline) over the plays, at both ends.
-struct Differences {
-  std::vector<double> of_end[2];
+/// One community's plays, at both ends: turnout under the scenario less turnout under the baseline, and the estimate of
+/// its mean.
+struct Plays {
+  std::vector<double> difference[2];
+  std::vector<double> estimate[2];
 
-  explicit Differences(std::int64_t draws) : of_end{std::vector<double>(draws), std::vector<double>(draws)} {}
+  explicit Plays(std::int64_t draws) {
+    for (int end : {least, greatest}) {
+      difference[end].resize(draws);
+      estimate[end].resize(draws);
+    }
+  }
 };
 
 struct Simulated {
@@ -41,19 +46,20 @@ double quantile(const std::vector<double>& sorted, double p) {
   return sorted[below] + (at - std::floor(at)) * (sorted[above] - sorted[below]);
 }
 
-Simulated summarise_plays(Differences differences) {
+/// Mean and standard error come from the estimates, the spread from the plays as they were.
+Simulated summarise_plays(Plays plays) {
   Simulated result;
   for (int end : {least, greatest}) {
-    std::vector<double>& values = differences.of_end[end];
+    std::vector<double>& values = plays.estimate[end];
     const auto count = static_cast<double>(values.size());
     const double mean = ordered_sum(values) / count;
-    std::vector<double> squares(values.size());
-    for (std::size_t k = 0; k < values.size(); ++k) squares[k] = (values[k] - mean) * (values[k] - mean);
+    for (double& value : values) value = (value - mean) * (value - mean);
     result.mean[end] = mean;
-    result.standard_error[end] = std::sqrt(ordered_sum(squares) / (count - 1.0) / count);
-    std::sort(values.begin(), values.end());
-    const double low = quantile(values, 0.05);
-    const double high = quantile(values, 0.95);
+    result.standard_error[end] = std::sqrt(ordered_sum(values) / (count - 1.0) / count);
+    std::vector<double>& sorted = plays.difference[end];
+    std::sort(sorted.begin(), sorted.end());
+    const double low = quantile(sorted, 0.05);
+    const double high = quantile(sorted, 0.95);
     result.spread_low = end == least ? low : std::min(result.spread_low, low);
     result.spread_high = end == least ? high : std::max(result.spread_high, high);
   }
@@ -72,30 +78,24 @@ struct Row {
 
 class Comparison {
  public:
-  Comparison(const Solution& baseline, const Solution& scenario, std::int64_t draws, std::uint64_t seed)
-      : baseline_(baseline), scenario_(scenario), draws_(draws), seed_(seed) {}
+  Comparison(const PairedRun& run, std::int64_t draws) : run_(run), draws_(draws) {}
 
   std::vector<Row> rows(const Execution& execution) const {
-    const auto count = static_cast<std::int64_t>(baseline_.enclosures.size());
+    const std::vector<Community>& communities = run_.baseline.study->communities;
+    const auto count = static_cast<std::int64_t>(communities.size());
     std::vector<Row> rows(count + 1);
-    Differences pooled(draws_);
+    Plays pooled(draws_);
     std::vector<double> totals;
-    for (const Community& community : baseline_.study->communities)
-      totals.push_back(ordered_sum(community.values.weight));
+    for (const Community& community : communities) totals.push_back(ordered_sum(community.values.weight));
     const double total = ordered_sum(totals);
     for (std::int64_t first = 0; first < count; first += block) {
       const std::int64_t size = std::min(block, count - first);
-      std::vector<Differences> plays(size, Differences(draws_));
-      run_tasks(size, execution, [&](std::int64_t k, const StopFlag& stop) {
-        rows[first + k + 1] = compare(static_cast<int>(first + k), plays[k], stop);
-      });
+      const std::vector<Plays> plays = compare(first, size, &rows[first + 1], execution);
       // In the order of communities, whoever computed them.
       for (std::int64_t k = 0; k < size; ++k) {
         const double share = totals[first + k] / total;
         add_to_pool(rows[0], rows[first + k + 1], share);
-        for (int end : {least, greatest}) {
-          for (std::int64_t r = 0; r < draws_; ++r) pooled.of_end[end][r] += share * plays[k].of_end[end][r];
-        }
+        if (draws_ > 0) add_plays(pooled, plays[k], share);
       }
     }
     if (draws_ > 0) rows[0].simulated = summarise_plays(std::move(pooled));
@@ -103,33 +103,46 @@ class Comparison {
   }
 
  private:
-  Row compare(int c, Differences& plays, const StopFlag& stop) const {
-    const Enclosure& before = baseline_.enclosures[c];
-    const Enclosure& after = scenario_.enclosures[c];
-    const Knowledge known_before = make_knowledge(*baseline_.study, baseline_.beliefs, c);
-    const Knowledge known_after = make_knowledge(*scenario_.study, scenario_.beliefs, c);
-    const std::vector<double>& weights = baseline_.study->communities[c].values.weight;
+  /// The communities first .. first + size - 1: the analytic part into `rows`, then the plays.
+  std::vector<Plays> compare(std::int64_t first, std::int64_t size, Row* rows, const Execution& execution) const {
+    std::vector<std::unique_ptr<PairedCommunity>> played(size);
+    run_tasks(size, execution, [&](std::int64_t k, const StopFlag&) {
+      played[k] = std::make_unique<PairedCommunity>(run_, static_cast<int>(first + k));
+      rows[k] = analytic(*played[k]);
+    });
+    std::vector<Plays> plays(draws_ > 0 ? size : 0, Plays(draws_));
+    std::vector<PlayPiece> pieces;
+    for (std::int64_t k = 0; k < size; ++k) cut_plays(pieces, k, rows[k].members, draws_);
+    run_tasks(static_cast<std::int64_t>(pieces.size()), execution, [&](std::int64_t task, const StopFlag& stop) {
+      play(pieces[task], *played[pieces[task].community], plays[pieces[task].community], stop);
+    });
+    run_tasks(static_cast<std::int64_t>(plays.size()), execution,
+              [&](std::int64_t k, const StopFlag&) { rows[k].simulated = summarise_plays(plays[k]); });
+    return plays;
+  }
+
+  void play(const PlayPiece& piece, const PairedCommunity& played, Plays& plays, const StopFlag& stop) const {
+    PairedPlayer player(run_, played);
+    play_by_lanes(piece, stop, [&](std::int64_t first, int count) {
+      player.play(first);
+      for (int end : {least, greatest}) {
+        for (int lane = 0; lane < count; ++lane) {
+          plays.difference[end][first + lane] = player.scenario(end)[lane] - player.baseline(end)[lane];
+          plays.estimate[end][first + lane] = player.estimate(end)[lane];
+        }
+      }
+    });
+  }
+
+  static Row analytic(const PairedCommunity& played) {
     Row row;
-    row.members = known_before.size;
-    row.baseline_verdict = before.verdict;
-    row.scenario_verdict = after.verdict;
-    row.baseline[least] = weighted_mean(weights, chances(known_before, before.least));
-    row.baseline[greatest] = weighted_mean(weights, chances(known_before, before.greatest));
-    row.scenario[least] = weighted_mean(weights, chances(known_after, after.least));
-    row.scenario[greatest] = weighted_mean(weights, chances(known_after, after.greatest));
-    if (draws_ == 0) return row;
-    Player player_before(known_before);
-    Player player_after(known_after);
-    for (std::int64_t r = 0; r < draws_ && !stop.raised(); ++r) {
-      const PlayKey key{seed_, static_cast<std::uint64_t>(c), static_cast<std::uint64_t>(r)};
-      player_before.draw(key, std::nullopt);
-      player_after.draw(key, std::nullopt);
-      plays.of_end[least][r] =
-          player_after.turnout(after.least, weights) - player_before.turnout(before.least, weights);
-      plays.of_end[greatest][r] =
-          player_after.turnout(after.greatest, weights) - player_before.turnout(before.greatest, weights);
+    row.members = played.baseline.knowledge.size;
+    row.baseline_verdict = played.baseline.ends.verdict;
+    row.scenario_verdict = played.scenario.ends.verdict;
+    for (int end : {least, greatest}) {
+      row.baseline[end] = played.baseline.expected[end];
+      row.scenario[end] = played.scenario.expected[end];
     }
-    row.simulated = summarise_plays(plays);
     return row;
   }
 
@@ -143,10 +156,17 @@ class Comparison {
     }
   }
 
-  const Solution& baseline_;
-  const Solution& scenario_;
+  static void add_plays(Plays& pool, const Plays& plays, double share) {
+    for (int end : {least, greatest}) {
+      for (std::size_t r = 0; r < pool.estimate[end].size(); ++r) {
+        pool.difference[end][r] += share * plays.difference[end][r];
+        pool.estimate[end][r] += share * plays.estimate[end][r];
+      }
+    }
+  }
+
+  const PairedRun& run_;
   std::int64_t draws_;
-  std::uint64_t seed_;
 };
 
 Text missing_value(const std::vector<Text>&) { return std::nullopt; }
@@ -203,15 +223,11 @@ Table tabulate(const std::vector<Row>& rows, const Values& community_labels) {
 
 }  // namespace
 
-Table counterfactual_table(const Solution& baseline, const Scenario& scenario, std::int64_t draws, std::uint64_t seed,
-                           const Execution& execution) {
-  if (scenario.baseline() != baseline.study && scenario.baseline()->digest() != baseline.study->digest()) {
-    throw BadArgument("the scenario was made from another study than the equilibrium; make both from the same study.");
-  }
-  const Solution after = solve(std::make_shared<const Study>(scenario.edited()), scenario.apply(baseline.beliefs),
-                               baseline.payoff, baseline.rule, execution);
-  const Comparison comparison(baseline, after, draws, seed);
-  return tabulate(comparison.rows(execution), baseline.study->roster->community_labels);
+Table counterfactual_table(const Solution& baseline, const Scenario& scenario, const PlayRange& range,
+                           const Estimator& estimator, const Execution& execution) {
+  const Solution after = solve_scenario(baseline, scenario, execution);
+  const PairedRun run{baseline, after, range.condition, estimator, range.seed};
+  return tabulate(Comparison(run, range.count).rows(execution), baseline.study->roster->community_labels);
 }
 
 }  // namespace folkmote

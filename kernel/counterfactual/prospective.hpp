@@ -5,13 +5,21 @@
 
 #include <cstdint>
 
+#include "counterfactual/paired.hpp"
 #include "counterfactual/scenario.hpp"
-#include "equilibrium/solution.hpp"
+#include "turnout/tables.hpp"
 
 namespace folkmote {
 
-/// Columns as in folkmote_counterfactual: a pooled row, then one row per community.
-Table counterfactual_table(const Solution& baseline, const Scenario& scenario, std::int64_t draws, std::uint64_t seed,
-                           const Execution& execution);
+/// Columns as in folkmote_counterfactual: a pooled row, then one row per community. The range starts at replication 0.
+Table counterfactual_table(const Solution& baseline, const Scenario& scenario, const PlayRange& range,
+                           const Estimator& estimator, const Execution& execution);
+
+/// Columns as in folkmote_counterfactual_plays: one row per community and replication.
+Table paired_table(const Solution& baseline, const Scenario& scenario, const PlayRange& range,
+                   const Estimator& estimator, const Execution& execution);
+
+/// The baseline's game under the scenario. Throws BadArgument when the scenario was made from another study.
+Solution solve_scenario(const Solution& baseline, const Scenario& scenario, const Execution& execution);
 
 }  // namespace folkmote

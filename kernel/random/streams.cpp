@@ -43,9 +43,8 @@ void Stream::fill_uniform(std::span<double> out) {
 }
 
 void Stream::fill_normal(std::span<double> out) {
-  for (double& value : out) {
-    value = normal();
-  }
+  fill_uniform(out);
+  normal_quantile(out, out);
 }
 
 void Stream::seek(std::uint64_t position) {

@@ -4,8 +4,8 @@
 #include <cmath>
 #include <vector>
 
+#include "numerics/adaptive.hpp"
 #include "numerics/normal.hpp"
-#include "numerics/quadrature.hpp"
 #include "turnout/moments.hpp"
 
 namespace folkmote {
@@ -28,25 +28,6 @@ double poisson_binomial_tail(std::span<const double> chance, int needed) {
     count[0] *= 1.0 - p;
   }
   return reached;
-}
-
-/// Integral of f over [low, high] by 10-point Gauss-Legendre panels, halved until both halves agree with the whole.
-template <class F>
-double adaptive_integral(const F& f, const QuadratureRule& rule, double low, double high, double whole, double error,
-                         int depth) {
-  const auto panel = [&](double a, double b) {
-    double sum = 0.0;
-    for (std::size_t k = 0; k < rule.nodes.size(); ++k) {
-      sum += rule.weights[k] * f(0.5 * (a + b) + 0.5 * (b - a) * rule.nodes[k]);
-    }
-    return 0.5 * (b - a) * sum;
-  };
-  const double middle = 0.5 * (low + high);
-  const double left = panel(low, middle);
-  const double right = panel(middle, high);
-  if (depth == 0 || std::fabs(left + right - whole) <= error) return left + right;
-  return adaptive_integral(f, rule, low, middle, left, 0.5 * error, depth - 1) +
-         adaptive_integral(f, rule, middle, high, right, 0.5 * error, depth - 1);
 }
 
 }  // namespace
@@ -88,17 +69,7 @@ double chance_at_least(const Knowledge& knowledge, const SharedInformation& shar
     return normal_density(z) *
            chance_at_least_given(knowledge, shared, weights, cutoffs, threshold, knowledge.prior_mean + scale * z);
   };
-  const QuadratureRule rule = gauss_legendre(10);
-  constexpr double reach = 8.0;
-  constexpr int panels = 8;
-  double sum = 0.0;
-  for (int k = 0; k < panels; ++k) {
-    const double low = -reach + 2.0 * reach * k / panels;
-    const double high = -reach + 2.0 * reach * (k + 1) / panels;
-    // A first guess that no panel can meet by chance: every panel is halved at least once.
-    sum += adaptive_integral(integrand, rule, low, high, -1.0, 1e-9 / panels, 12);
-  }
-  return std::min(1.0, sum);
+  return std::min(1.0, adaptive_integral(integrand, -8.0, 8.0, 8, 1e-9));
 }
 
 }  // namespace folkmote

@@ -71,8 +71,7 @@ LargeTurnout::LargeTurnout(const Knowledge& knowledge, std::span<const double> w
 double LargeTurnout::mean_at(std::span<const double> cutoffs, double above_mean, double shift) const {
   std::vector<double> z(weights_.size());
   for (std::size_t j = 0; j < z.size(); ++j) {
-    const double margin =
-        (cutoffs[j] - knowledge_.prior_mean) - laws_.pull[j] * above_mean - laws_.sway[j] * shift;
+    const double margin = (cutoffs[j] - knowledge_.prior_mean) - laws_.pull[j] * above_mean - laws_.sway[j] * shift;
     z[j] = standardised(margin, laws_.spread[j]);
   }
   normal_cdf(z, z);
@@ -125,8 +124,8 @@ Moments LargeTurnout::add_pairs(std::span<const double> z, std::span<const doubl
         const double r = correlation(exact(i, j) + (1.0 - row.one_less_rho[k]) * knowledge_.index_variance[i],
                                      variance[i], variance[j]);
         if (r == r0) continue;
-        sum += weights_[j] * (binormal_covariance(z[i], z[j], r) -
-                              (r0 == 0.0 ? 0.0 : binormal_covariance(z[i], z[j], r0)));
+        sum += weights_[j] *
+               (binormal_covariance(z[i], z[j], r) - (r0 == 0.0 ? 0.0 : binormal_covariance(z[i], z[j], r0)));
       }
       rows[i] = weights_[i] * sum;
     }

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <functional>
+#include <optional>
 
 #include "community/columns.hpp"
 #include "turnout/chance.hpp"
@@ -100,21 +101,21 @@ struct TurnoutRows {
 };
 
 /// A value of theta, or none.
-using Condition = std::optional<double>;
+using Given = std::optional<double>;
 
 /// One community's moments and chances, by the dense form or the sparse one.
 struct Answers {
-  std::function<Moments(std::span<const double> cutoffs, const Condition&)> moments;
-  std::function<double(std::span<const double> cutoffs, double threshold, const Condition&)> chance;
+  std::function<Moments(std::span<const double> cutoffs, const Given&)> moments;
+  std::function<double(std::span<const double> cutoffs, double threshold, const Given&)> chance;
   bool exact;
 };
 
 Answers dense_answers(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights) {
-  return {[&, weights](std::span<const double> cutoffs, const Condition& condition) {
+  return {[&, weights](std::span<const double> cutoffs, const Given& condition) {
             return condition ? turnout_given(knowledge, shared, weights, cutoffs, *condition)
                              : turnout_moments(knowledge, shared, weights, cutoffs);
           },
-          [&, weights](std::span<const double> cutoffs, double threshold, const Condition& condition) {
+          [&, weights](std::span<const double> cutoffs, double threshold, const Given& condition) {
             return condition ? chance_at_least_given(knowledge, shared, weights, cutoffs, threshold, *condition)
                              : chance_at_least(knowledge, shared, weights, cutoffs, threshold);
           },
@@ -122,19 +123,19 @@ Answers dense_answers(const Knowledge& knowledge, const SharedInformation& share
 }
 
 Answers sparse_answers(const LargeTurnout& large) {
-  return {[&](std::span<const double> cutoffs, const Condition& condition) {
+  return {[&](std::span<const double> cutoffs, const Given& condition) {
             return condition ? large.moments_given(cutoffs, *condition) : large.moments(cutoffs);
           },
-          [&](std::span<const double> cutoffs, double threshold, const Condition& condition) {
+          [&](std::span<const double> cutoffs, double threshold, const Given& condition) {
             return condition ? large.chance_given(cutoffs, threshold, *condition) : large.chance(cutoffs, threshold);
           },
           false};
 }
 
-void fill_rows(const Answers& answers, const Enclosure& found, std::span<const Condition> conditions,
+void fill_rows(const Answers& answers, const Enclosure& found, std::span<const Given> conditions,
                std::span<const double> at_least, std::size_t row, TurnoutRows& rows) {
   const std::size_t thresholds = std::max<std::size_t>(at_least.size(), 1);
-  for (const Condition& condition : conditions) {
+  for (const Given& condition : conditions) {
     for (int end = 0; end < 2; ++end) {
       const std::vector<double>& cutoffs = end == 0 ? found.least : found.greatest;
       const Moments moments = answers.moments(cutoffs, condition);
@@ -158,7 +159,7 @@ void fill_rows(const Answers& answers, const Enclosure& found, std::span<const C
 Table turnout_table(const Solution& solution, std::span<const double> given, std::span<const double> at_least,
                     const Execution& execution) {
   const std::size_t communities = solution.study->communities.size();
-  std::vector<Condition> conditions(given.begin(), given.end());
+  std::vector<Given> conditions(given.begin(), given.end());
   if (conditions.empty()) conditions.push_back(std::nullopt);
   const std::size_t each = conditions.size() * std::max<std::size_t>(at_least.size(), 1);
   TurnoutRows rows(communities * each);

@@ -3,11 +3,11 @@
 #include "numerics/strict.hpp"
 
 #include <cstdint>
-#include <optional>
 #include <span>
 
 #include "community/table.hpp"
 #include "equilibrium/solution.hpp"
+#include "turnout/condition.hpp"
 
 namespace folkmote {
 
@@ -27,7 +27,7 @@ struct PlayRange {
   std::int64_t first;  // replication numbers first .. first + count - 1, from 0
   std::int64_t count;
   std::uint64_t seed;
-  std::optional<double> given;
+  Condition condition;
 };
 
 /// community, replication, obstacle, turnout_least, turnout_greatest.

@@ -16,5 +16,14 @@ echo "a full solve of 2,000 members, both ends to 1e-10, one thread: seconds, an
   .ci/julia.sh --startup-file=no tests/bench/bench_dense.jl 2000 "$build/bench_links.txt"
 } | awk '$1 == "folkmote" { ours = $2 } NF == 2 { printf "%-9s %10.3f s %8.0f x\n", $1, $2, $2 / ours } NF > 2'
 
+for members in 1000; do
+  echo "plays of $members members, one thread: seconds, and how many times folkmote's"
+  {
+    "$build/tests/bench/bench_plays" "$members" 10000 "$build/bench_links.txt"
+    Rscript tests/bench/bench_plays.R "$members" 10000 "$build/bench_links.txt"
+    .ci/julia.sh --startup-file=no tests/bench/bench_plays.jl "$members" 10000 "$build/bench_links.txt"
+  } | awk '$1 == "folkmote" { ours = $2 } NF == 2 { printf "%-9s %10.3f s %8.1f x\n", $1, $2, $2 / ours } NF > 2'
+done
+
 "$build/tests/bench/bench_engine" "${1:-100000}"
 "$build/tests/bench/bench_sensitivity"

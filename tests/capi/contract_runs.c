@@ -1,6 +1,7 @@
 /* Runs: threads, progress and cancel, shards, lifetimes, arguments of results, and published values. */
 #include <math.h>
 #include <pthread.h>
+#include <stdio.h>
 #include <stdlib.h>
 #include <time.h>
 
@@ -337,6 +338,86 @@ static void test_sensitivity_arguments(void) {
   folkmote_study_destroy(study);
 }
 
+static void test_conditions(void) {
+  folkmote_study* study = sound_study();
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_scenario* s = NULL;
+  folkmote_table *table = NULL, *given = NULL;
+  const double ranges[][2] = {{NAN, 1}, {0, NAN}, {1, 0}, {INFINITY, INFINITY}, {-INFINITY, -INFINITY}, {30, INFINITY}};
+  const int level = FOLKMOTE_BY_COMMUNITY;
+  const double theta = 0.7;
+  folkmote_scenario_create(study, &s, NULL);
+  for (int k = 0; k < 6; ++k) {
+    const double low = ranges[k][0], high = ranges[k][1];
+    REFUSED(folkmote_simulate_within(e, 0, 1, 1, low, high, level, NULL, &table, message));
+    REFUSED(folkmote_counterfactual_within(e, s, 2, 1, low, high, NULL, &table, message));
+    REFUSED(folkmote_counterfactual_plays(e, s, 0, 1, 1, low, high, NULL, &table, message));
+    REFUSED(folkmote_chunk_run(e, NULL, 0, 1, 1, low, high, level, NULL, "chunk", NULL, message));
+  }
+  REFUSED(folkmote_counterfactual_within(e, s, 1, 1, 0, 1, NULL, &table, message));
+  REFUSED(folkmote_counterfactual_plays(e, s, -1, 1, 1, 0, 1, NULL, &table, message));
+  REFUSED(folkmote_counterfactual_plays(e, s, 0, 0, 1, 0, 1, NULL, &table, message));
+  folkmote_simulate_within(e, 3, 5, 1, theta, theta, level, NULL, &table, message);
+  folkmote_simulate(e, 3, 5, 1, &theta, level, NULL, &given, message);
+  CHECK(folkmote_table_digest(table) != 0 && folkmote_table_digest(table) == folkmote_table_digest(given));
+  folkmote_table_destroy(table);
+  folkmote_table_destroy(given);
+  folkmote_counterfactual_within(e, s, 4, 1, -INFINITY, INFINITY, NULL, &table, message);
+  folkmote_counterfactual(e, s, 4, 1, NULL, &given, message);
+  CHECK(folkmote_table_digest(table) != 0 && folkmote_table_digest(table) == folkmote_table_digest(given));
+  folkmote_table_destroy(table);
+  folkmote_table_destroy(given);
+  folkmote_scenario_destroy(s);
+  folkmote_equilibrium_destroy(e);
+  folkmote_study_destroy(study);
+}
+
+static void test_chunks(void) {
+  folkmote_study *study = sound_study(), *same = sound_study(), *other = ring_study(2, 3);
+  folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
+  folkmote_scenario* s = NULL;
+  folkmote_table *whole = NULL, *merged = NULL;
+  const char* paths[2] = {"contract-b.chunk", "contract-a.chunk"};
+  const int level = FOLKMOTE_BY_COMMUNITY;
+  int computed = -1;
+  folkmote_scenario_create(study, &s, NULL);
+  CHECK(folkmote_study_digest(study) != 0 && folkmote_study_digest(study) == folkmote_study_digest(same));
+  CHECK(folkmote_study_digest(study) != folkmote_study_digest(other));
+  CHECK_STATUS(folkmote_chunk_run(e, NULL, 0, 3, 9, 0, 1, level, NULL, paths[1], &computed, message), FOLKMOTE_OK,
+               message);
+  CHECK(computed == 1);
+  CHECK_STATUS(folkmote_chunk_run(e, NULL, 3, 8, 9, 0, 1, level, NULL, paths[0], NULL, message), FOLKMOTE_OK, message);
+  CHECK_STATUS(folkmote_chunk_run(e, NULL, 0, 3, 9, 0, 1, level, NULL, paths[1], &computed, message), FOLKMOTE_OK,
+               message);
+  CHECK(computed == 0);
+  CHECK_STATUS(folkmote_chunk_run(e, NULL, 0, 3, 10, 0, 1, level, NULL, paths[1], NULL, message), FOLKMOTE_BAD_FILE,
+               message);
+  CHECK_STATUS(folkmote_chunk_run(e, NULL, 0, 3, 9, 0, 1, level, NULL, "no/folder/here", NULL, message),
+               FOLKMOTE_BAD_FILE, message);
+  REFUSED(folkmote_chunk_run(e, s, 0, 3, 9, 0, 1, FOLKMOTE_BY_MEMBER, NULL, paths[1], NULL, message));
+  REFUSED(folkmote_chunk_run(e, NULL, 0, 3, 9, 0, 1, 0, NULL, paths[1], NULL, message));
+  CHECK_STATUS(folkmote_chunk_merge(2, paths, 0, 11, &merged, message), FOLKMOTE_OK, message);
+  folkmote_simulate_within(e, 0, 11, 9, 0, 1, level, NULL, &whole, NULL);
+  CHECK(folkmote_table_digest(merged) != 0 && folkmote_table_digest(merged) == folkmote_table_digest(whole));
+  folkmote_table_destroy(merged);
+  CHECK_STATUS(folkmote_chunk_merge(1, paths, 0, 11, &merged, message), FOLKMOTE_BAD_FILE, message);
+  CHECK(merged == NULL);
+  REFUSED(folkmote_chunk_merge(0, paths, 0, 11, &merged, message));
+  REFUSED(folkmote_chunk_merge(2, paths, -1, 11, &merged, message));
+  REFUSED(folkmote_chunk_table(0, paths, &merged, message));
+  CHECK_STATUS(folkmote_chunk_table(2, paths, &merged, message), FOLKMOTE_OK, message);
+  CHECK(integer_at(merged, "first_draw", 0) == 3 && integer_at(merged, "draws", 0) == 8);
+  folkmote_table_destroy(merged);
+  folkmote_table_destroy(whole);
+  remove(paths[0]);
+  remove(paths[1]);
+  folkmote_scenario_destroy(s);
+  folkmote_equilibrium_destroy(e);
+  folkmote_study_destroy(study);
+  folkmote_study_destroy(same);
+  folkmote_study_destroy(other);
+}
+
 static void test_scenario_arguments(void) {
   folkmote_study *study = sound_study(), *other = ring_study(2, 3);
   folkmote_equilibrium* e = plain_equilibrium(study, 0.4, 1, 2);
@@ -383,6 +464,8 @@ void test_runs(void) {
   test_inputs_may_go();
   test_result_arguments();
   test_sensitivity_arguments();
+  test_conditions();
+  test_chunks();
   test_scenario_arguments();
   CHECK_HEALTHY(0);
 }

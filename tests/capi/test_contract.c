@@ -15,7 +15,7 @@ static void test_constants_agree(void) {
 /* Numbers written out once more: a renumbered enumeration breaks every wrapper that was built before. */
 static void test_numbers_are_pinned(void) {
   CHECK(FOLKMOTE_OK == 0 && FOLKMOTE_BAD_ARGUMENT == 1 && FOLKMOTE_BAD_DATA == 2 && FOLKMOTE_OUT_OF_MEMORY == 3 &&
-        FOLKMOTE_CANCELLED == 4 && FOLKMOTE_INTERNAL == 9);
+        FOLKMOTE_CANCELLED == 4 && FOLKMOTE_BAD_FILE == 5 && FOLKMOTE_INTERNAL == 9);
   CHECK(FOLKMOTE_TEXT == 1 && FOLKMOTE_INTEGER == 2 && FOLKMOTE_REAL == 3);
   CHECK(FOLKMOTE_PRIOR_MEAN == 1 && FOLKMOTE_PRIOR_PRECISION == 2 && FOLKMOTE_SIGNAL_PRECISION == 3 &&
         FOLKMOTE_RELAY_PRECISION == 4 && FOLKMOTE_STAKE_SD == 5);
@@ -33,6 +33,7 @@ static void test_status_words(void) {
                {FOLKMOTE_BAD_DATA, "FOLKMOTE_BAD_DATA"},
                {FOLKMOTE_OUT_OF_MEMORY, "FOLKMOTE_OUT_OF_MEMORY"},
                {FOLKMOTE_CANCELLED, "FOLKMOTE_CANCELLED"},
+               {FOLKMOTE_BAD_FILE, "FOLKMOTE_BAD_FILE"},
                {FOLKMOTE_INTERNAL, "FOLKMOTE_INTERNAL"}};
   for (int status = -3; status <= 300; ++status) {
     const char* name = "unknown status";

@@ -15,7 +15,8 @@ include("oracle.jl")
 include("notebook_runner.jl")
 
 const FILES = ["test_raw.jl", "test_load.jl", "test_study.jl", "test_bad_input.jl", "test_equilibrium.jl",
-               "test_oracle.jl", "test_turnout.jl", "test_sensitivity.jl", "test_scenario.jl", "test_seeds.jl", "test_handles.jl",
+               "test_oracle.jl", "test_turnout.jl", "test_sensitivity.jl", "test_scenario.jl", "test_seeds.jl",
+               "test_handles.jl", "test_chunks.jl",
                "test_display.jl", "test_interrupt.jl", "test_notebook.jl"]
 
 passed(set) = set.n_passed + sum(Int[passed(inner) for inner in set.results if inner isa Test.DefaultTestSet])

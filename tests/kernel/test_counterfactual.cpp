@@ -94,7 +94,7 @@ TEST_CASE("set_beliefs overrides the parameter and any column of that name", "[s
 TEST_CASE("no edit: no difference in any draw", "[counterfactual]") {
   const studies::Mixed made = studies::mixed(12);
   const Solution baseline = studies::solved(made.study, made.beliefs, made.payoff);
-  const Table table = counterfactual_table(baseline, Scenario(made.study), 50, 7, {});
+  const Table table = counterfactual_table(baseline, Scenario(made.study), {0, 50, 7, {}}, {}, {});
   for (const char* column : {"difference_least", "difference_greatest", "simulated_least", "simulated_greatest",
                              "standard_error_least", "spread_low", "spread_high"}) {
     for (double value : reals(table, column)) CHECK(value == 0.0);
@@ -112,7 +112,7 @@ TEST_CASE("common random numbers: the simulated difference is the analytic one, 
     if (seed % 3 == 0) scenario.thin_links(0.3, seed);
     if (seed % 4 == 0) scenario.forward_reports(2);
     if (seed % 5 == 0) scenario.gathering(nullptr);
-    const Table table = counterfactual_table(baseline, scenario, 3000, seed, {2, {}});
+    const Table table = counterfactual_table(baseline, scenario, {0, 3000, seed, {}}, {}, {2, {}});
     for (int end = 0; end < 2; ++end) {
       const double analytic = reals(table, end == 0 ? "difference_least" : "difference_greatest")[1];
       const double simulated = reals(table, end == 0 ? "simulated_least" : "simulated_greatest")[1];
@@ -122,7 +122,7 @@ TEST_CASE("common random numbers: the simulated difference is the analytic one, 
       // Independent plays would have an error near sqrt(2) sd(A) / sqrt(3000), about 0.01 here.
       CHECK(error < 0.008);
     }
-    CHECK(counterfactual_table(baseline, scenario, 3000, seed, {1, {}}).digest() == table.digest());
+    CHECK(counterfactual_table(baseline, scenario, {0, 3000, seed, {}}, {}, {1, {}}).digest() == table.digest());
   }
 }
 
@@ -131,7 +131,7 @@ TEST_CASE("several equilibria: the whole interval goes downstream", "[counterfac
   const Solution baseline = studies::solved(study, studies::beliefs(0.4, 1.0, 4.0));
   Scenario scenario(study);
   scenario.shift_cost(nullptr, 0.1);
-  const Table table = counterfactual_table(baseline, scenario, 0, 0, {});
+  const Table table = counterfactual_table(baseline, scenario, {0, 0, 0, {}}, {}, {});
   CHECK(*std::get<std::vector<Text>>(table.find("baseline_verdict")->values)[0] == "several");
   CHECK(reals(table, "baseline_least")[0] < reals(table, "baseline_greatest")[0]);
   CHECK(reals(table, "difference_low")[0] < reals(table, "difference_least")[0]);
@@ -141,6 +141,7 @@ TEST_CASE("several equilibria: the whole interval goes downstream", "[counterfac
 
 TEST_CASE("a scenario of another study is refused", "[counterfactual]") {
   const Solution baseline = studies::solved(studies::one_community(4), studies::beliefs(0.4, 1.0, 4.0));
-  CHECK_THROWS_AS(counterfactual_table(baseline, Scenario(studies::one_community(5)), 0, 0, {}), BadArgument);
-  CHECK_NOTHROW(counterfactual_table(baseline, Scenario(studies::one_community(4)), 0, 0, {}));
+  CHECK_THROWS_AS(counterfactual_table(baseline, Scenario(studies::one_community(5)), {0, 0, 0, {}}, {}, {}),
+                  BadArgument);
+  CHECK_NOTHROW(counterfactual_table(baseline, Scenario(studies::one_community(4)), {0, 0, 0, {}}, {}, {}));
 }

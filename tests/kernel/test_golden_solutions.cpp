@@ -41,14 +41,14 @@ std::map<std::string, std::string> digests_now(int threads) {
     if (seed % 10 != 0) continue;
     const double given[] = {0.2, 0.6}, at_least[] = {0.5};
     turnout.add(turnout_table(solution, given, at_least, execution).digest());
-    plays.add(action_table(solution, {3, 20, seed, std::nullopt}, execution).digest());
+    plays.add(action_table(solution, {3, 20, seed, {}}, execution).digest());
     derivatives.add(member_sensitivity_table(solution, levers, execution).digest());
     derivatives.add(link_sensitivity_table(solution, execution).digest());
     Scenario scenario(made.study);
     scenario.thin_links(0.2, seed);
     scenario.broadcast(nullptr, 2.0);
     scenario.forward_reports(2);
-    counterfactuals.add(counterfactual_table(solution, scenario, 40, seed, execution).digest());
+    counterfactuals.add(counterfactual_table(solution, scenario, {0, 40, seed, {}}, {}, execution).digest());
   }
   // Communities large enough for the turnout curve: with and without private stakes, and with mixed reach.
   Digest large;

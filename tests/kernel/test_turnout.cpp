@@ -2,10 +2,14 @@
 #include <catch2/catch.hpp>
 #include <cmath>
 
+#include "community/fault.hpp"
+#include "numerics/bits.hpp"
 #include "numerics/normal.hpp"
+#include "numerics/sums.hpp"
 #include "small_studies.hpp"
 #include "turnout/chance.hpp"
 #include "turnout/moments.hpp"
+#include "turnout/play_block.hpp"
 #include "turnout/plays.hpp"
 #include "turnout/tables.hpp"
 
@@ -167,7 +171,7 @@ TEST_CASE("a gathering equals its exact links: the same draws and results", "[tu
   const Solution a = studies::solved(gathered, beliefs);
   const Solution b = studies::solved(studies::one_community(size, links), beliefs);
   for (int i = 0; i < size; ++i) CHECK(std::fabs(a.enclosures[0].least[i] - b.enclosures[0].least[i]) < 1e-12);
-  const PlayRange range{0, 50, 7, std::nullopt};
+  const PlayRange range{0, 50, 7, {}};
   CHECK(play_table(a, range, {}).digest() == play_table(b, range, {}).digest());
   CHECK(action_table(a, range, {}).digest() == action_table(b, range, {}).digest());
   const Table ta = turnout_table(a, {}, {}, {}), tb = turnout_table(b, {}, {}, {});
@@ -198,12 +202,55 @@ TEST_CASE("sharing signals lowers turnout where the obstacle is low and raises i
 TEST_CASE("plays do not depend on threads or on how the range is split", "[turnout]") {
   const studies::Mixed made = studies::mixed(4);
   const Solution solution = studies::solved(made.study, made.beliefs, made.payoff);
-  const Table whole = play_table(solution, {0, 30, 99, std::nullopt}, {1, {}});
-  CHECK(whole.digest() == play_table(solution, {0, 30, 99, std::nullopt}, {4, {}}).digest());
-  const Table part = play_table(solution, {10, 5, 99, std::nullopt}, {});
+  const Table whole = play_table(solution, {0, 30, 99, {}}, {1, {}});
+  CHECK(whole.digest() == play_table(solution, {0, 30, 99, {}}, {4, {}}).digest());
+  const Table part = play_table(solution, {10, 5, 99, {}}, {});
   const auto& all = std::get<std::vector<double>>(whole.find("turnout_least")->values);
   const auto& some = std::get<std::vector<double>>(part.find("turnout_least")->values);
   for (int r = 0; r < 5; ++r) CHECK(some[r] == all[10 + r]);
-  const Table other = play_table(solution, {0, 30, 100, std::nullopt}, {});
+  const Table other = play_table(solution, {0, 30, 100, {}}, {});
   CHECK(whole.digest() != other.digest());
+}
+
+TEST_CASE("plays four at a time are the plays one by one, to the bit", "[turnout]") {
+  for (std::uint64_t seed = 0; seed < 60; ++seed) {
+    const studies::Mixed made = studies::mixed(seed);
+    const Knowledge k = make_knowledge(*made.study, made.beliefs, 0);
+    const auto& weights = made.study->communities[0].values.weight;
+    const std::vector<double> cutoffs(k.size, 0.3);
+    const Condition condition = seed % 3 == 0 ? Condition{0.4, 0.4} : Condition{};
+    const std::optional<double> given = condition.point() ? std::optional<double>(0.4) : std::nullopt;
+    BlockPlayer block(k, condition);
+    PlayDraws draws(k.size, k.broadcasts.size(), BlockPlayer::has_stakes(k));
+    draws.fill({seed, 3, 5});
+    block.play(draws);
+    const Lanes shares = block.turnout(cutoffs, weights, ordered_sum(weights));
+    Player single(k);
+    for (int lane = 0; lane < lanes; ++lane) {
+      CAPTURE(seed, lane);
+      CHECK(single.draw({seed, 3, 5 + static_cast<std::uint64_t>(lane)}, given) == block.obstacle()[lane]);
+      CHECK(single.turnout(cutoffs, weights) == shares[lane]);
+      for (int i = 0; i < k.size; ++i) REQUIRE(single.indices()[i] == block.index(i, lane));
+    }
+  }
+}
+
+TEST_CASE("the obstacle within a range follows the truncated normal law", "[turnout]") {
+  const Knowledge k = make_knowledge(*studies::one_community(2), studies::beliefs(0.3, 4.0, 1.0), 0);
+  for (const auto& [low, high] : std::vector<std::pair<double, double>>{
+           {-infinity, 0.1}, {0.2, 0.9}, {1.5, infinity}, {2.6, 3.0}, {-2.5, -2.0}, {0.3, 0.3000001}}) {
+    const ObstacleLaw law(k, {low, high});
+    CAPTURE(low, high);
+    const double a = (low - 0.3) * 2, b = (high - 0.3) * 2;
+    for (double u : {0.001, 0.1, 0.5, 0.9, 0.999}) {
+      const double theta = law.obstacle(u), z = (theta - 0.3) * 2;
+      CHECK((theta >= low && theta <= high));
+      const bool far = a > 0;  // the share below theta, from the side on which it is exact
+      const double below = far ? (normal_upper(a) - normal_upper(z)) / (normal_upper(a) - normal_upper(b))
+                               : (normal_cdf(z) - normal_cdf(a)) / (normal_cdf(b) - normal_cdf(a));
+      CHECK(std::fabs(below - (far ? 1 - u : u)) < 1e-9 + 1e-15 / (normal_cdf(b) - normal_cdf(a)));
+    }
+  }
+  CHECK(ObstacleLaw(k, {0.7, 0.7}).obstacle(0.9) == 0.7);
+  CHECK_THROWS_AS(ObstacleLaw(k, {5.0, infinity}), BadArgument);
 }

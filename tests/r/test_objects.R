@@ -84,7 +84,7 @@ test_that("provenance names everything a data editor asks for", {
     expect_true(any(startsWith(text, item)), label = item)
   }
   expect_true(any(grepl("^seed: +42$", text)))
-  expect_identical(sum(grepl("^digest.* [0-9a-f]{16}$", text)), 3L)
+  expect_identical(sum(grepl("^digest.* [0-9a-f]{16}$", text)), 4L)
   expect_true(any(grepl("^seed: +41$", as.character(provenance(scenario(st, thin_links(0.5, seed = 41)))))))
   same <- equilibrium(good_study(), good_beliefs())
   expect_identical(same$provenance$inputs, eq$provenance$inputs)

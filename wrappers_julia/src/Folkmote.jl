@@ -37,6 +37,7 @@ using Printf: @sprintf
 export study, beliefs, share_payoff, equilibrium, turnout, simulate, sensitivity, counterfactual
 export scenario, add_links, cut_links, thin_links, gathering, shift_cost, set_beliefs, forward_reports
 export columns, provenance, cutoff_picture, FolkmoteError
+export split_draws, run_chunk, run_chunks, merge_chunks
 
 include("errors.jl")
 include("raw.jl")
@@ -56,6 +57,7 @@ include("sensitivity.jl")
 include("edits.jl")
 include("scenario.jl")
 include("counterfactual.jl")
+include("chunks.jl")
 include("words.jl")
 include("show_text.jl")
 include("svg.jl")

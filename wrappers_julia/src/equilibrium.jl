@@ -42,7 +42,9 @@ function equilibrium(st::Study, b::Beliefs, payoff::SharePayoff = share_payoff()
     close(kernel_beliefs)
     close(kernel_payoff)
     table, digest = level_table(handle, ids_of(st), :community)
-    record = Provenance("equilibrium", began; inputs = ["study, beliefs and payoff" => equilibrium_digest(handle)],
+    record = Provenance("equilibrium", began; inputs = [
+                            "study" => Raw.folkmote_study_digest(handle_of(st)),
+                            "study, beliefs and payoff" => equilibrium_digest(handle)],
                         result = digest, settings = ["tolerance" => string(tolerance), "sweeps at most" => string(sweeps)])
     return Equilibrium(handle, table, st, record)
 end

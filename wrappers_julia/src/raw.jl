@@ -59,6 +59,7 @@ const FOLKMOTE_BAD_ARGUMENT = 1
 const FOLKMOTE_BAD_DATA = 2
 const FOLKMOTE_OUT_OF_MEMORY = 3
 const FOLKMOTE_CANCELLED = 4
+const FOLKMOTE_BAD_FILE = 5
 const FOLKMOTE_INTERNAL = 9
 
 @exported folkmote_status_name(status::Cint)::Cstring
@@ -98,6 +99,8 @@ const FOLKMOTE_REAL = 3
 @exported folkmote_study_summary(study::Ptr{folkmote_study}, table::Ptr{Ptr{folkmote_table}},
                                  message::Message)::Status
 
+@exported folkmote_study_digest(study::Ptr{folkmote_study})::UInt64
+
 # ---- Parameters of beliefs and payoff
 const FOLKMOTE_PRIOR_MEAN = 1
 const FOLKMOTE_PRIOR_PRECISION = 2
@@ -124,6 +127,9 @@ const FOLKMOTE_SHARE_PAYOFF = 1
 const FOLKMOTE_TOLERANCE = 32
 const FOLKMOTE_SWEEPS = 33
 const FOLKMOTE_THREADS = 34
+const FOLKMOTE_COMMON_DRAWS = 40
+const FOLKMOTE_OVER_STAKES = 41
+const FOLKMOTE_CONTROL = 42
 
 @exported folkmote_options_create(options::Ptr{Ptr{folkmote_options}}, message::Message)::Status
 @exported folkmote_options_destroy(options::Ptr{folkmote_options})::Cvoid
@@ -151,6 +157,11 @@ const FOLKMOTE_BY_MEMBER = 2
                             seed::UInt64, given::Ptr{Float64}, level::Cint,
                             options::Ptr{folkmote_options}, table::Ptr{Ptr{folkmote_table}},
                             message::Message)::Status
+
+@exported folkmote_simulate_within(equilibrium::Ptr{folkmote_equilibrium}, first_draw::Int64, draws::Int64,
+                                   seed::UInt64, low::Float64, high::Float64, level::Cint,
+                                   options::Ptr{folkmote_options}, table::Ptr{Ptr{folkmote_table}},
+                                   message::Message)::Status
 
 # ---- Sensitivity
 const FOLKMOTE_BROADCAST_PRECISION = 24
@@ -187,5 +198,25 @@ const FOLKMOTE_BROADCAST_PRECISION = 24
 @exported folkmote_counterfactual(equilibrium::Ptr{folkmote_equilibrium}, scenario::Ptr{folkmote_scenario},
                                   draws::Int64, seed::UInt64, options::Ptr{folkmote_options},
                                   table::Ptr{Ptr{folkmote_table}}, message::Message)::Status
+
+@exported folkmote_counterfactual_within(equilibrium::Ptr{folkmote_equilibrium},
+                                         scenario::Ptr{folkmote_scenario}, draws::Int64, seed::UInt64,
+                                         low::Float64, high::Float64, options::Ptr{folkmote_options},
+                                         table::Ptr{Ptr{folkmote_table}}, message::Message)::Status
+@exported folkmote_counterfactual_plays(equilibrium::Ptr{folkmote_equilibrium},
+                                        scenario::Ptr{folkmote_scenario}, first_draw::Int64, draws::Int64,
+                                        seed::UInt64, low::Float64, high::Float64,
+                                        options::Ptr{folkmote_options}, table::Ptr{Ptr{folkmote_table}},
+                                        message::Message)::Status
+
+# ---- Chunks
+@exported folkmote_chunk_run(equilibrium::Ptr{folkmote_equilibrium}, scenario::Ptr{folkmote_scenario},
+                             first_draw::Int64, draws::Int64, seed::UInt64, low::Float64, high::Float64,
+                             level::Cint, options::Ptr{folkmote_options}, path::Cstring, computed::Ptr{Cint},
+                             message::Message)::Status
+@exported folkmote_chunk_merge(count::Int64, paths::Ptr{Ptr{UInt8}}, first_draw::Int64, draws::Int64,
+                               table::Ptr{Ptr{folkmote_table}}, message::Message)::Status
+@exported folkmote_chunk_table(count::Int64, paths::Ptr{Ptr{UInt8}}, table::Ptr{Ptr{folkmote_table}},
+                               message::Message)::Status
 
 end

@@ -59,7 +59,8 @@ function study(members, links_in_order = nothing; links = nothing, broadcasts = 
     handle = create(Raw.folkmote_study) do study, message
         Raw.folkmote_study_create(or_null.(tables)..., flag(mutual, "mutual"), study, message)
     end
-    ids, digests = IdTypes(id_type(community_column), id_type(member_column)), input_digests(tables)
+    ids = IdTypes(id_type(community_column), id_type(member_column))
+    digests = ["study" => Raw.folkmote_study_digest(handle); input_digests(tables)]
     foreach(give_back, tables)
     return indexed_study(handle, ids, community_column, member_column, began, digests, mutual)
 end

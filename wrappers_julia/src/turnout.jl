@@ -30,7 +30,7 @@ function turnout(eq::Equilibrium; given = nothing, at_least = nothing)
                              table, message)
     end
     found, digest = taken(table, ids_of(study_of(eq)))
-    record = Provenance("turnout", began; inputs = ["equilibrium" => equilibrium_digest(handle_of(eq))],
+    record = Provenance("turnout", began; inputs = inputs_of(eq),
                         result = digest, settings = settings_text(given = given, at_least = at_least))
     return Turnout(found, cells_of(eq), record)
 end
@@ -58,7 +58,8 @@ end
 
 Seeded plays of an equilibrium, each with its own draw of everything unseen, at both ends on the same draws. `seed` is a
 whole number 0..2^53; `nothing` takes one from Julia's default generator (so `Random.seed!` governs), stores and shows it.
-`given`: one value of the obstacle θ at which to play.
+`given`: one value of the obstacle θ at which to play, or a range `(low, high)` of it, whose ends may be infinite; then θ
+follows its prior truncated to the range.
 
 `level = :community`: `community`, `replication` (from 1), `obstacle`, `turnout_least`, `turnout_greatest` (shares, 0..1).
 `level = :member`: `community`, `member`, `replication`, `index`, `action_least`, `action_greatest` (0 or 1); member rows
@@ -72,20 +73,30 @@ plays = simulate(eq; nsim = 100, seed = 7)
 function simulate(eq::Equilibrium; nsim = 1, seed = nothing, given = nothing, level = :community)
     began = time()
     used = the_seed(seed)
-    theta = given === nothing ? Ptr{Float64}(C_NULL) : [one_number(given, "given")]
+    low, high = range_given(given)
     table = Handle{Raw.folkmote_table}()
     draws, level_number = whole(nsim, "nsim"), LEVELS[checked_level(level)]
     watched("simulate"; threads = default_threads()) do options, message
-        Raw.folkmote_simulate(handle_of(eq), FIRST_DRAW, draws, used, theta, level_number, options, table, message)
+        Raw.folkmote_simulate_within(handle_of(eq), FIRST_DRAW, draws, used, low, high, level_number, options, table,
+                                     message)
     end
     found, digest = taken(table, ids_of(study_of(eq)))
     record = Provenance("simulate", began; seed = used, result = digest,
-                        inputs = ["equilibrium" => equilibrium_digest(handle_of(eq))],
+                        inputs = inputs_of(eq),
                         settings = settings_text(nsim = nsim, given = given, level = level))
     return Simulation(found, cells_of(eq), record)
 end
 
 const FIRST_DRAW = 0
+
+inputs_of(eq) = ["study" => Raw.folkmote_study_digest(handle_of(study_of(eq))),
+                 "equilibrium" => equilibrium_digest(handle_of(eq))]
+
+"What is known of the obstacle, as a range: nothing, its value, or both ends."
+range_given(::Nothing) = (-Inf, Inf)
+range_given(value::Real) = (Float64(value), Float64(value))
+range_given(ends) = length(ends) == 2 ? (one_number(first(ends), "given"), one_number(last(ends), "given")) :
+    refuse("given = $(repr(ends)) cannot be used: it is nothing, one number, or a range (low, high).")
 
 whole(value::Bool, name) = bad_whole(value, name)
 whole(value::Real, name) = isinteger(value) && abs(value) <= 2^53 ? Int64(value) : bad_whole(value, name)

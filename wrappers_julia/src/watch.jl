@@ -65,7 +65,8 @@ function new_options(; settings...)
 end
 
 const OPTIONS = (tolerance = Raw.FOLKMOTE_TOLERANCE, sweeps = Raw.FOLKMOTE_SWEEPS,
-                 threads = Raw.FOLKMOTE_THREADS)
+                 threads = Raw.FOLKMOTE_THREADS, common = Raw.FOLKMOTE_COMMON_DRAWS,
+                 stakes = Raw.FOLKMOTE_OVER_STAKES, control = Raw.FOLKMOTE_CONTROL)
 
 one_number(value::Real, name) = Float64(value)
 one_number(value, name) = refuse("$name = $(repr(value)) cannot be used: it must be one number.")

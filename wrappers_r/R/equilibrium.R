@@ -16,7 +16,8 @@ equilibrium <- function(study, beliefs, payoff = share_payoff(), tolerance = 1e-
   handle <- equilibrium_handle(x, threads)
   table <- from_table(raw_equilibrium_table(handle, level_code[["community"]]), study$members)
   record <- provenance_record(
-    "equilibrium", inputs = c(all = raw_equilibrium_digest(handle)), output = table,
+    "equilibrium", inputs = c(study = raw_study_digest(study_handle(study)), all = raw_equilibrium_digest(handle)),
+    output = table,
     settings = c(tolerance = x$tolerance, sweeps = x$sweeps)
   )
   attr(table, "digest") <- NULL

@@ -21,11 +21,12 @@ equilibrium_handle <- function(eq, threads = NULL) live_handle(eq, function(x) b
 scenario_handle <- function(scenario) live_handle(scenario, build_scenario)
 
 # Options of one run: caps, threads, progress and interrupts. The caller ends it with raw_options_finish().
-run_options <- function(threads = NULL, tolerance = NULL, sweeps = NULL) {
+run_options <- function(threads = NULL, tolerance = NULL, sweeps = NULL, devices = NULL) {
   options <- raw_options_create()
   raw_options_set(options, option_code[["threads"]], resolve_threads(threads))
   if (!is.null(tolerance)) raw_options_set(options, option_code[["tolerance"]], tolerance)
   if (!is.null(sweeps)) raw_options_set(options, option_code[["sweeps"]], sweeps)
+  for (device in names(devices)) raw_options_set(options, option_code[[device]], devices[[device]])
   raw_options_progress(options, interactive() && !isFALSE(getOption("folkmote.progress")))
   options
 }

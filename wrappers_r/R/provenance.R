@@ -12,8 +12,15 @@ provenance_record <- function(what, inputs, output, seed = NULL, settings = NULL
     output = digest,
     r = R.version.string,
     platform = R.version$platform,
+    machine = machine_text(),
     time = format(Sys.time(), "%Y-%m-%dT%H:%M:%SZ", tz = "UTC")
   )
+}
+
+machine_text <- function() {
+  system <- Sys.info()
+  paste0(system[["sysname"]], " ", system[["release"]], ", ", system[["machine"]], ", ",
+         count_of(available_threads(), "hardware thread"))
 }
 
 provenance <- function(x) {
@@ -45,6 +52,7 @@ record_items <- function(record) {
     "digest of result" = record$output,
     R = record$r,
     platform = record$platform,
+    machine = record$machine,
     time = record$time
   )
 }

@@ -29,6 +29,7 @@ raw_study_create <- function(members, links, broadcasts, gatherings, communities
   checked(.Call(C_study_create, members, links, broadcasts, gatherings, communities, as.integer(mutual)))
 }
 raw_study_summary <- function(study) checked(.Call(C_study_summary, study))
+raw_study_digest <- function(study) .Call(C_study_digest, study)
 
 raw_parameter_bounds <- function(parameter) checked(.Call(C_parameter_bounds, parameter))
 raw_beliefs_create <- function() checked(.Call(C_beliefs_create))
@@ -51,6 +52,10 @@ raw_turnout <- function(equilibrium, given, at_least, options) {
 }
 raw_simulate <- function(equilibrium, first, draws, seed, given, level, options) {
   checked(.Call(C_simulate, equilibrium, as.double(first), as.double(draws), as.double(seed), given, level, options))
+}
+raw_simulate_within <- function(equilibrium, first, draws, seed, low, high, level, options) {
+  checked(.Call(C_simulate_within, equilibrium, as.double(first), as.double(draws), as.double(seed), low, high, level,
+                options))
 }
 
 raw_sensitivity <- function(equilibrium, parameters, level, options) {
@@ -86,6 +91,22 @@ raw_scenario_digest <- function(scenario) .Call(C_scenario_digest, scenario)
 raw_counterfactual <- function(equilibrium, scenario, draws, seed, options) {
   checked(.Call(C_counterfactual, equilibrium, scenario, as.double(draws), as.double(seed), options))
 }
+raw_counterfactual_within <- function(equilibrium, scenario, draws, seed, low, high, options) {
+  checked(.Call(C_counterfactual_within, equilibrium, scenario, as.double(draws), as.double(seed), low, high, options))
+}
+raw_counterfactual_plays <- function(equilibrium, scenario, first, draws, seed, low, high, options) {
+  checked(.Call(C_counterfactual_plays, equilibrium, scenario, as.double(first), as.double(draws), as.double(seed), low,
+                high, options))
+}
+
+raw_chunk_run <- function(equilibrium, scenario, first, draws, seed, low, high, level, options, file) {
+  checked(.Call(C_chunk_run, equilibrium, scenario, as.double(first), as.double(draws), as.double(seed), low, high,
+                level, options, file))
+}
+raw_chunk_merge <- function(files, first, draws) {
+  checked(.Call(C_chunk_merge, files, as.double(first), as.double(draws)))
+}
+raw_chunk_table <- function(files) checked(.Call(C_chunk_table, files))
 
 # Numbers of the header's enumerations that R code refers to.
 type_code <- c(text = 1L, integer = 2L, real = 3L)
@@ -94,6 +115,6 @@ parameter_code <- c(
   benefit = 16L, cost = 17L, reach = 18L
 )
 payoff_code <- c(share = 1L)
-option_code <- c(tolerance = 32L, sweeps = 33L, threads = 34L)
+option_code <- c(tolerance = 32L, sweeps = 33L, threads = 34L, common = 40L, stakes = 41L, control = 42L)
 level_code <- c(community = 1L, member = 2L)
 status_code <- c(ok = 0L, cancelled = 4L)

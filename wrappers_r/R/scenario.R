@@ -63,25 +63,41 @@ cat_edits <- function(edits) {
   for (k in seq_along(edits)) cat("  ", k, ". ", edits[[k]]$text, "\n", sep = "")
 }
 
-counterfactual <- function(eq, scenario, draws = 1000, seed = NULL, threads = NULL) {
+counterfactual <- function(eq, scenario, draws = 1000, seed = NULL, threads = NULL, given = NULL,
+                           reduce = c("common", "stakes", "control")) {
   of_class(eq, "eq", "folkmote_equilibrium", "equilibrium()")
   of_class(scenario, "scenario", "folkmote_scenario", "scenario()")
   draws <- one_whole(draws, "draws", 0, 1e9)
   if (draws == 1) stop_argument("draws", "0 for none, or at least 2", draws)
+  given <- resolve_given(given)
+  devices <- resolve_reduce(reduce)
   seed <- if (draws > 0) resolve_seed(seed)
   equilibrium <- equilibrium_handle(eq, threads)
   edited <- scenario_handle(scenario)
   table <- with_options(
-    function(options) raw_counterfactual(equilibrium, edited, draws, if (is.null(seed)) 0 else seed, options),
-    threads = threads
+    function(options) {
+      raw_counterfactual_within(equilibrium, edited, draws, if (is.null(seed)) 0 else seed, given[1L], given[2L],
+                                options)
+    },
+    threads = threads, devices = devices
   )
   result <- result_of(
     eq, from_table(table, eq$study$members), "counterfactual", seed = seed,
-    inputs = c(scenario = raw_scenario_digest(edited))
+    inputs = c(scenario = raw_scenario_digest(edited)),
+    settings = c(draws = draws, given_settings(given), if (draws > 0) devices)
   )
   attr(result, "edits") <- vapply(scenario$edits, `[[`, "", "text")
   attr(result, "draws") <- draws
   result
+}
+
+# Devices that lower the error of the simulated difference without moving it; each can be left out.
+resolve_reduce <- function(reduce) {
+  known <- c("common", "stakes", "control")
+  if (!(is.null(reduce) || is.character(reduce)) || !all(reduce %in% known)) {
+    stop_argument("reduce", "NULL or some of \"common\", \"stakes\", \"control\"", reduce)
+  }
+  stats::setNames(as.double(known %in% reduce), known)
 }
 
 print.folkmote_counterfactual <- function(x, rows = 12, ...) {

@@ -14,7 +14,8 @@ study <- function(members, links = NULL, broadcasts = NULL, gatherings = NULL, c
   )
   x <- structure(x, class = c("folkmote_study", "folkmote_object"))
   summary <- from_table(raw_study_summary(study_handle(x)), x$members)
-  inputs <- vapply(study_tables, function(name) table_digest(x[[name]], name), "")
+  inputs <- c(study = raw_study_digest(study_handle(x)),
+    vapply(study_tables, function(name) table_digest(x[[name]], name), ""))
   record <- provenance_record("study", inputs = inputs, output = summary)
   attr(summary, "digest") <- NULL
   x <- unclass(x)

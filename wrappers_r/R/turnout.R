@@ -15,26 +15,43 @@ simulate.folkmote_equilibrium <- function(object, nsim = 1, seed = NULL, given =
                                           threads = NULL, ...) {
   no_more_arguments(...)
   nsim <- one_whole(nsim, "nsim", 1, 1e9)
-  if (!is.null(given)) given <- one_number(given, "given", "NULL or one finite number (the obstacle)")
+  given <- resolve_given(given)
   level <- one_choice(level, "level", names(level_code))
   seed <- resolve_seed(seed)
   handle <- equilibrium_handle(object, threads)
   table <- with_options(
-    function(options) raw_simulate(handle, 0, nsim, seed, given, level_code[[level]], options),
+    function(options) raw_simulate_within(handle, 0, nsim, seed, given[1L], given[2L], level_code[[level]], options),
     threads = threads
   )
-  result <- result_of(object, from_table(table, object$study$members), "simulation", seed = seed)
+  result <- result_of(object, from_table(table, object$study$members), "simulation", seed = seed,
+    settings = c(plays = nsim, given_settings(given)))
   attr(result, "level") <- level
   attr(result, "seed") <- seed
   result
 }
 
+# What is known of the obstacle, as a range: nothing, its value, or c(low, high) with ends that may be infinite.
+resolve_given <- function(given) {
+  if (is.null(given)) return(c(-Inf, Inf))
+  ok <- is.numeric(given) && !is.object(given) && length(given) %in% 1:2 && !anyNA(given)
+  if (ok) given <- rep_len(as.double(given), 2L)
+  if (!ok || given[1L] > given[2L] || (given[1L] == given[2L] && !is.finite(given[1L]))) {
+    stop_argument("given", "NULL, one finite number (the obstacle), or a range c(low, high) of it", given)
+  }
+  given
+}
+
+given_settings <- function(given) {
+  if (all(is.infinite(given))) return(NULL)
+  if (given[1L] == given[2L]) c(given = given[1L]) else c("given from" = given[1L], "given to" = given[2L])
+}
+
 # A table that came from an equilibrium, with its verdicts and its record.
-result_of <- function(eq, frame, kind, seed = NULL, inputs = NULL) {
+result_of <- function(eq, frame, kind, seed = NULL, inputs = NULL, settings = NULL) {
   record <- provenance_record(
-    kind, inputs = c(equilibrium = raw_equilibrium_digest(equilibrium_handle(eq)),
-      inputs), output = frame, seed = seed,
-    settings = c(tolerance = eq$tolerance, sweeps = eq$sweeps)
+    kind, inputs = c(study = raw_study_digest(study_handle(eq$study)),
+      equilibrium = raw_equilibrium_digest(equilibrium_handle(eq)), inputs), output = frame, seed = seed,
+    settings = c(tolerance = eq$tolerance, sweeps = eq$sweeps, settings)
   )
   new_result(frame, kind, record, verdicts = verdicts_of(eq))
 }

@@ -31,3 +31,11 @@ SEXP fm_simulate(SEXP equilibrium, SEXP first, SEXP draws, SEXP seed, SEXP given
                                     (int64_t)fm_number(draws, "draws"), (uint64_t)fm_number(seed, "seed"), theta,
                                     fm_whole(level, "level"), fm_options_get(options), &made, message))
 }
+
+SEXP fm_simulate_within(SEXP equilibrium, SEXP first, SEXP draws, SEXP seed, SEXP low, SEXP high, SEXP level,
+                        SEXP options) {
+  FM_MAKES(table, folkmote_simulate_within(solved(equilibrium), (int64_t)fm_number(first, "first"),
+                                           (int64_t)fm_number(draws, "draws"), (uint64_t)fm_number(seed, "seed"),
+                                           fm_number(low, "low"), fm_number(high, "high"), fm_whole(level, "level"),
+                                           fm_options_get(options), &made, message))
+}

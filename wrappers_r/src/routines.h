@@ -32,6 +32,7 @@ SEXP fm_options_finish(SEXP options);
 
 SEXP fm_study_create(SEXP members, SEXP links, SEXP broadcasts, SEXP gatherings, SEXP communities, SEXP mutual);
 SEXP fm_study_summary(SEXP study);
+SEXP fm_study_digest(SEXP study);
 
 SEXP fm_beliefs_create(void);
 SEXP fm_beliefs_set(SEXP beliefs, SEXP parameter, SEXP values);
@@ -44,6 +45,8 @@ SEXP fm_equilibrium_table(SEXP equilibrium, SEXP level);
 SEXP fm_equilibrium_digest(SEXP equilibrium);
 SEXP fm_turnout(SEXP equilibrium, SEXP given, SEXP at_least, SEXP options);
 SEXP fm_simulate(SEXP equilibrium, SEXP first, SEXP draws, SEXP seed, SEXP given, SEXP level, SEXP options);
+SEXP fm_simulate_within(SEXP equilibrium, SEXP first, SEXP draws, SEXP seed, SEXP low, SEXP high, SEXP level,
+                        SEXP options);
 
 SEXP fm_sensitivity(SEXP equilibrium, SEXP parameters, SEXP level, SEXP options);
 SEXP fm_link_sensitivity(SEXP equilibrium, SEXP options);
@@ -60,5 +63,14 @@ SEXP fm_scenario_forward_reports(SEXP scenario, SEXP hops);
 SEXP fm_scenario_study(SEXP scenario);
 SEXP fm_scenario_digest(SEXP scenario);
 SEXP fm_counterfactual(SEXP equilibrium, SEXP scenario, SEXP draws, SEXP seed, SEXP options);
+SEXP fm_counterfactual_within(SEXP equilibrium, SEXP scenario, SEXP draws, SEXP seed, SEXP low, SEXP high,
+                              SEXP options);
+SEXP fm_counterfactual_plays(SEXP equilibrium, SEXP scenario, SEXP first, SEXP draws, SEXP seed, SEXP low, SEXP high,
+                             SEXP options);
+
+SEXP fm_chunk_run(SEXP equilibrium, SEXP scenario, SEXP first, SEXP draws, SEXP seed, SEXP low, SEXP high, SEXP level,
+                  SEXP options, SEXP file);
+SEXP fm_chunk_merge(SEXP files, SEXP first, SEXP draws);
+SEXP fm_chunk_table(SEXP files);
 
 #endif

@@ -41,8 +41,22 @@ SEXP fm_scenario_digest(SEXP scenario) {
   return fm_digest(folkmote_scenario_digest(edited(scenario)));
 }
 
-SEXP fm_counterfactual(SEXP equilibrium, SEXP scenario, SEXP draws, SEXP seed, SEXP options) {
-  FM_MAKES(table, folkmote_counterfactual(fm_handle_get(equilibrium, &fm_kind_equilibrium), edited(scenario),
-                                          (int64_t)fm_number(draws, "draws"), (uint64_t)fm_number(seed, "seed"),
-                                          fm_options_get(options), &made, message))
+SEXP fm_counterfactual(SEXP equilibrium, SEXP scenario, SEXP draws, SEXP seed, SEXP options){
+    FM_MAKES(table, folkmote_counterfactual(fm_handle_get(equilibrium, &fm_kind_equilibrium), edited(scenario),
+                                            (int64_t)fm_number(draws, "draws"), (uint64_t)fm_number(seed, "seed"),
+                                            fm_options_get(options), &made, message))}
+
+SEXP fm_counterfactual_within(SEXP equilibrium, SEXP scenario, SEXP draws, SEXP seed, SEXP low, SEXP high,
+                              SEXP options){
+    FM_MAKES(table, folkmote_counterfactual_within(fm_handle_get(equilibrium, &fm_kind_equilibrium), edited(scenario),
+                                                   (int64_t)fm_number(draws, "draws"),
+                                                   (uint64_t)fm_number(seed, "seed"), fm_number(low, "low"),
+                                                   fm_number(high, "high"), fm_options_get(options), &made, message))}
+
+SEXP fm_counterfactual_plays(SEXP equilibrium, SEXP scenario, SEXP first, SEXP draws, SEXP seed, SEXP low, SEXP high,
+                             SEXP options) {
+  FM_MAKES(table, folkmote_counterfactual_plays(fm_handle_get(equilibrium, &fm_kind_equilibrium), edited(scenario),
+                                                (int64_t)fm_number(first, "first"), (int64_t)fm_number(draws, "draws"),
+                                                (uint64_t)fm_number(seed, "seed"), fm_number(low, "low"),
+                                                fm_number(high, "high"), fm_options_get(options), &made, message))
 }

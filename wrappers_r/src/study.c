@@ -7,6 +7,10 @@ SEXP fm_study_create(SEXP members, SEXP links, SEXP broadcasts, SEXP gatherings,
                                           table_or_null(gatherings), table_or_null(communities),
                                           fm_whole(mutual, "mutual"), &made, message))}
 
+SEXP fm_study_digest(SEXP study) {
+  return fm_digest(folkmote_study_digest(fm_handle_get(study, &fm_kind_study)));
+}
+
 SEXP fm_study_summary(SEXP study) {
   FM_MAKES(table, folkmote_study_summary(fm_handle_get(study, &fm_kind_study), &made, message))
 }
