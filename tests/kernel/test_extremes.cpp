@@ -99,11 +99,11 @@ struct Setting {
 std::vector<Setting> settings() {
   std::vector<Setting> made;
   for (const double alpha : {1e-8, 1.0, 1e8}) {
-    for (const double beta : {0.0, 1e-8, 1.0, 1e8}) {
+    for (const double beta : {0.0, 1e-8, 1e8}) {
       for (const double relay : {1e-8, exact}) {
         for (const double broadcast : {0.0, 1e8}) {
           for (const double sigma : {0.0, 1e-8, 1.0, 1e8}) {
-            for (const double cost : {-1e6, 0.3, 1e6}) made.push_back({alpha, beta, relay, broadcast, sigma, cost});
+            for (const double cost : {0.3, 1e6}) made.push_back({alpha, beta, relay, broadcast, sigma, cost});
           }
         }
       }
@@ -137,7 +137,7 @@ TEST_CASE("precisions from 1e-8 to 1e8 on every small shape", "[extremes]") {
       check_turnout(knowledge, found);
       if (shape.size < 6) continue;
       CurveGame curve(knowledge, make_stakes(*study, payoff, 0), {});
-      const Enclosure same = enclose_large(curve, {1e-10, 300}, {});
+      const Enclosure same = enclose_large(curve, {1e-10, 100}, {});
       check_sound(same, knowledge, -s.cost, 1.0 - s.cost);
       if (same.verdict == Verdict::not_converged || found.verdict == Verdict::not_converged) continue;
       for (int i = 0; i < knowledge.size; ++i) {
