@@ -77,6 +77,11 @@ folkmote_status folkmote_scenario_thin_links(folkmote_scenario* scenario, double
   return guard(message, [&] { edit_whole(scenario, [&](auto& edited) { edited.thin_links(share, seed); }); });
 }
 
+folkmote_status folkmote_scenario_rewire_links(folkmote_scenario* scenario, double share, uint64_t seed,
+                                               char* message) {
+  return guard(message, [&] { edit_whole(scenario, [&](auto& edited) { edited.rewire_links(share, seed); }); });
+}
+
 folkmote_status folkmote_scenario_broadcast(folkmote_scenario* scenario, const folkmote_table* audience,
                                             double precision, char* message) {
   return guard(message, [&] {
@@ -94,6 +99,12 @@ folkmote_status folkmote_scenario_shift_cost(folkmote_scenario* scenario, const 
                                              char* message) {
   return guard(message,
                [&] { edit_whole(scenario, [&](auto& edited) { edited.shift_cost(table_or_none(audience), by); }); });
+}
+
+folkmote_status folkmote_scenario_shift_benefit(folkmote_scenario* scenario, const folkmote_table* audience, double by,
+                                                char* message) {
+  return guard(message,
+               [&] { edit_whole(scenario, [&](auto& edited) { edited.shift_benefit(table_or_none(audience), by); }); });
 }
 
 folkmote_status folkmote_scenario_set_beliefs(folkmote_scenario* scenario, int parameter, int64_t count,

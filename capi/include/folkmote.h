@@ -463,6 +463,14 @@ FOLKMOTE_API folkmote_status folkmote_scenario_cut_links(folkmote_scenario* scen
 FOLKMOTE_API folkmote_status folkmote_scenario_thin_links(folkmote_scenario* scenario, double share, uint64_t seed,
                                                           char* message);
 
+/* Rewire a random `share` in [0, 1] of the contacts of each community: the nearest whole number of them. Each drawn
+ * contact exchanges partners with another one of its kind (heard in both directions, or in one): a-b and c-d become
+ * a-d and c-b, so that everybody hears as many, and is heard by as many, as before. Each link keeps its listener and
+ * relay precision. Where a hundred draws find no exchange without a double contact, the contact stays as it is.
+ * Gatherings stay. share, seed  as in folkmote_scenario_thin_links */
+FOLKMOTE_API folkmote_status folkmote_scenario_rewire_links(folkmote_scenario* scenario, double share, uint64_t seed,
+                                                            char* message);
+
 /* One more broadcast per community with the given precision (> 0, finite), or one more gathering. `audience`: NULL for
  * everyone, or a table with community (all of its members), or with community and member.
  * A community that the audience leaves out gets none. A row that stands twice is FOLKMOTE_BAD_DATA. Members of a
@@ -476,6 +484,11 @@ FOLKMOTE_API folkmote_status folkmote_scenario_gathering(folkmote_scenario* scen
  * column gives. A negative number makes acting cheaper. Shifts add up. */
 FOLKMOTE_API folkmote_status folkmote_scenario_shift_cost(folkmote_scenario* scenario, const folkmote_table* audience,
                                                           double by, char* message);
+
+/* The same for the benefit. A benefit that ends below 0 is FOLKMOTE_BAD_ARGUMENT when the scenario is solved, and names
+ * the community. */
+FOLKMOTE_API folkmote_status folkmote_scenario_shift_benefit(folkmote_scenario* scenario,
+                                                             const folkmote_table* audience, double by, char* message);
 
 /* Replace a belief parameter (1 to 5), overriding any member or link column of that name. `count` and `values` as in
  * folkmote_beliefs_set, but the number is checked against the study at once. */

@@ -204,6 +204,7 @@ std::uint64_t Study::digest() const {
       digest.add(std::span<const double>(community.values.*column.field));
     }
     digest.add(std::span<const double>(community.values.cost_shift));
+    if (!community.values.benefit_shift.empty()) digest.add(std::span<const double>(community.values.benefit_shift));
     add_links(digest, community.links);
     for (const Broadcast& broadcast : community.broadcasts) {
       digest.add(broadcast.precision).add(std::span<const int>(broadcast.audience));

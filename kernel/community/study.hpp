@@ -39,6 +39,7 @@ struct MemberValues {
   std::vector<double> benefit;
   std::vector<double> cost;
   std::vector<double> cost_shift;      // added to the cost, whoever decides it
+  std::vector<double> benefit_shift;   // likewise; empty: none
   std::vector<double> turnout;         // observed action; NaN: missing
   std::vector<double> expected_share;  // elicited belief; NaN: missing
 };

@@ -9,6 +9,7 @@
 #include "community/columns.hpp"
 #include "community/fault.hpp"
 #include "community/membership.hpp"
+#include "counterfactual/rewire.hpp"
 #include "random/digest.hpp"
 #include "random/streams.hpp"
 
@@ -139,6 +140,14 @@ void Scenario::thin_links(double share, std::uint64_t seed) {
   }
 }
 
+void Scenario::rewire_links(double share, std::uint64_t seed) {
+  if (!(share >= 0.0 && share <= 1.0))
+    throw BadArgument("rewire_links: share is " + plain_number(share) + "; it must lie in 0 to 1.");
+  for (std::size_t c = 0; c < edited_.communities.size(); ++c) {
+    rewire(edited_.communities[c].links, share, Stream(StreamKey{seed, Purpose::rewiring, c, 0}));
+  }
+}
+
 void Scenario::broadcast(const Table* audience, double precision) {
   if (!(precision > 0.0) || std::isinf(precision)) {
     throw BadArgument("broadcast: precision is " + plain_number(precision) + "; it must be positive and finite.");
@@ -161,6 +170,16 @@ void Scenario::shift_cost(const Table* audience, double by) {
   const auto members = read_audience(*edited_.roster, audience, "shift_cost");
   for (std::size_t c = 0; c < members.size(); ++c) {
     for (int i : members[c]) edited_.communities[c].values.cost_shift[i] += by;
+  }
+}
+
+void Scenario::shift_benefit(const Table* audience, double by) {
+  if (!std::isfinite(by)) throw BadArgument("shift_benefit: by is " + plain_number(by) + "; it must be finite.");
+  const auto members = read_audience(*edited_.roster, audience, "shift_benefit");
+  for (std::size_t c = 0; c < members.size(); ++c) {
+    if (members[c].empty()) continue;
+    edited_.communities[c].values.benefit_shift.resize(edited_.communities[c].size, 0.0);
+    for (int i : members[c]) edited_.communities[c].values.benefit_shift[i] += by;
   }
 }
 

@@ -25,10 +25,13 @@ class Scenario {
   /// nullptr: every link.
   void cut_links(const Table* links, bool mutual);
   void thin_links(double share, std::uint64_t seed);
+  void rewire_links(double share, std::uint64_t seed);
   /// nullptr: everyone.
   void broadcast(const Table* audience, double precision);
   void gathering(const Table* audience);
   void shift_cost(const Table* audience, double by);
+  /// A benefit below 0 is found where the payoff is known: when the scenario is solved.
+  void shift_benefit(const Table* audience, double by);
   void set_beliefs(Parameter parameter, Spread values);
   void forward_reports(int hops);
 

@@ -2,6 +2,7 @@
 
 #include <cmath>
 
+#include "community/columns.hpp"
 #include "community/fault.hpp"
 #include "numerics/sums.hpp"
 
@@ -26,6 +27,20 @@ void check_payoff(const Study& study, const Payoff& payoff) {
   check_length(parameter_rule(static_cast<int>(Parameter::reach)), payoff.reach, study);
 }
 
+namespace {
+
+double shifted_benefit(const Study& study, int community, int member, double benefit) {
+  const std::vector<double>& shift = study.communities[community].values.benefit_shift;
+  if (shift.empty()) return benefit;
+  const double shifted = benefit + shift[member];
+  if (shifted >= 0.0 && std::isfinite(shifted)) return shifted;
+  throw BadArgument("shift_benefit leaves a member of community '" + study.roster->community_names[community] +
+                    "' a benefit of " + plain_number(shifted) +
+                    "; it must be at least 0 and finite, so shift by less.");
+}
+
+}  // namespace
+
 Stakes make_stakes(const Study& study, const Payoff& payoff, int community) {
   const MemberValues& values = study.communities[community].values;
   Stakes stakes;
@@ -35,7 +50,7 @@ Stakes make_stakes(const Study& study, const Payoff& payoff, int community) {
     const double benefit =
         std::isnan(values.benefit[i]) ? value_for(payoff.benefit, study, community, i) : values.benefit[i];
     const double cost = std::isnan(values.cost[i]) ? value_for(payoff.cost, study, community, i) : values.cost[i];
-    stakes.benefit.push_back(benefit);
+    stakes.benefit.push_back(shifted_benefit(study, community, i, benefit));
     stakes.cost.push_back(cost + values.cost_shift[i]);
   }
   return stakes;

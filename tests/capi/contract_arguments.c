@@ -336,9 +336,11 @@ static void test_null_studies(const folkmote_study* study, folkmote_scenario* s)
   REFUSED(folkmote_scenario_add_links(s, NULL, 0, message));
   REFUSED(folkmote_scenario_cut_links(NULL, NULL, 0, message));
   REFUSED(folkmote_scenario_thin_links(NULL, 0.5, 1, message));
+  REFUSED(folkmote_scenario_rewire_links(NULL, 0.5, 1, message));
   REFUSED(folkmote_scenario_broadcast(NULL, NULL, 1, message));
   REFUSED(folkmote_scenario_gathering(NULL, NULL, message));
   REFUSED(folkmote_scenario_shift_cost(NULL, NULL, 1, message));
+  REFUSED(folkmote_scenario_shift_benefit(NULL, NULL, 1, message));
   REFUSED(folkmote_scenario_set_beliefs(NULL, 1, 1, &value, message));
   REFUSED(folkmote_scenario_set_beliefs(s, 1, 1, NULL, message));
   REFUSED(folkmote_scenario_forward_reports(NULL, 1, message));
@@ -357,6 +359,8 @@ static void test_null_defaults(void) {
   CHECK_STATUS(folkmote_scenario_broadcast(scenario, NULL, 1, message), FOLKMOTE_OK, message);
   CHECK_STATUS(folkmote_scenario_gathering(scenario, NULL, message), FOLKMOTE_OK, message);
   CHECK_STATUS(folkmote_scenario_shift_cost(scenario, NULL, 0.1, message), FOLKMOTE_OK, message);
+  CHECK_STATUS(folkmote_scenario_shift_benefit(scenario, NULL, 0.1, message), FOLKMOTE_OK, message);
+  CHECK_STATUS(folkmote_scenario_rewire_links(scenario, 0.5, 1, message), FOLKMOTE_OK, message);
   CHECK_STATUS(folkmote_scenario_cut_links(scenario, NULL, 0, message), FOLKMOTE_OK, message);
   folkmote_study* edited = NULL;
   folkmote_table* summary = NULL;

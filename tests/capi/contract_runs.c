@@ -433,8 +433,10 @@ static void test_scenario_arguments(void) {
   CHECK_SAYS(message, "another study");
   const double shares[] = {-1e-9, 1 + 1e-9, NAN}, precisions[] = {0, -1, NAN, INFINITY};
   for (int k = 0; k < 3; ++k) REFUSED(folkmote_scenario_thin_links(s, shares[k], 1, message));
+  for (int k = 0; k < 3; ++k) REFUSED(folkmote_scenario_rewire_links(s, shares[k], 1, message));
   for (int k = 0; k < 4; ++k) REFUSED(folkmote_scenario_broadcast(s, NULL, precisions[k], message));
   REFUSED(folkmote_scenario_shift_cost(s, NULL, NAN, message));
+  REFUSED(folkmote_scenario_shift_benefit(s, NULL, NAN, message));
   REFUSED(folkmote_scenario_shift_cost(s, NULL, -INFINITY, message));
   REFUSED(folkmote_scenario_forward_reports(s, 0, message));
   REFUSED(folkmote_scenario_forward_reports(s, 65, message));

@@ -75,7 +75,8 @@ for call in (() -> beliefs(prior_mean = Inf, prior_precision = 1), () -> beliefs
              () -> simulate(equilibrium(st, b); nsim = -1), () -> simulate(equilibrium(st, b); nsim = 1.5),
              () -> simulate(equilibrium(st, b); level = :village), () -> study(two_communities(); mutual = 2),
              () -> scenario(st, broadcast(precision = 0)), () -> scenario(st, thin_links(1.5; seed = 1)),
-             () -> scenario(st, forward_reports(0)), () -> scenario(st, forward_reports(10^12)), () -> scenario(st, shift_cost(NaN)))
+             () -> scenario(st, forward_reports(0)), () -> scenario(st, forward_reports(10^12)), () -> scenario(st, shift_cost(NaN)), () -> scenario(st, rewire_links(-0.1; seed = 1)),
+             () -> scenario(st, shift_benefit(Inf)), () -> counterfactual(equilibrium(st, some_beliefs()), scenario(st, shift_benefit(-2)); draws = 0))
     found = refusal(call)
     @test found !== nothing && found.code === :FOLKMOTE_BAD_ARGUMENT && !isempty(found.sentence)
 end

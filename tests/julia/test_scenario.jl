@@ -16,6 +16,7 @@ contact = (community = ["north"], listener = [1], speaker = [3])
 @test edited(broadcast(members = (community = ["south"],), precision = 2)).broadcasts == [0, 1]
 @test edited(gathering(members = (community = ["north", "north"], member = [1, 3]))).gatherings == [1, 0]
 @test edited(gathering()).hears_most == [2, 1]
+@test edited(rewire_links(1; seed = 1)).links == edited(thin_links(0; seed = 1)).links
 @test edited(cut_links(:all), add_links(contact), thin_links(0; seed = 1)).links == [1, 0]
 @test study(scenario(scenario(st, cut_links(:all)), add_links(contact))).links == [1, 0]
 @test edited(add_links([sparse([1], [3], [true], 3, 3), spzeros(Bool, 2, 2)])).links == [5, 2]
@@ -29,7 +30,7 @@ contact = (community = ["north"], listener = [1], speaker = [3])
 @test refused(() -> scenario(st, broadcast(members = 3, precision = 1)), :FOLKMOTE_BAD_DATA, "table of columns")
 
 # Solving a scenario and comparing it give the same numbers, whatever is edited.
-for edits in ((broadcast(precision = 2),), (gathering(),), (shift_cost(0.1),), (set_beliefs(prior_mean = 0.1, stake_sd = 0.5),),
+for edits in ((broadcast(precision = 2),), (gathering(),), (shift_cost(0.1),), (shift_benefit(0.2),), (rewire_links(1; seed = 2),), (set_beliefs(prior_mean = 0.1, stake_sd = 0.5),),
               (forward_reports(2),), (set_beliefs(signal_precision = [1, 2]), shift_cost(-0.1; members = (community = ["south"],))))
     sc = scenario(st, edits...)
     compared = counterfactual(eq, sc; draws = 0, seed = 1)

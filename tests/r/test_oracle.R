@@ -90,7 +90,7 @@ test_that("a scenario is worth what solving the edited community says", {
     part <- random_community("here", seed)
     st <- community_study(part)
     eq <- community_equilibrium(part, st, tolerance = 1e-10)
-    sc <- scenario(st, broadcast(precision = 1.5), shift_cost(0.1), set_beliefs(prior_mean = 0.3))
+    sc <- scenario(st, broadcast(precision = 1.5), shift_cost(0.1), shift_benefit(0), set_beliefs(prior_mean = 0.3))
     x <- part$oracle
     x$broadcasts <- c(x$broadcasts, list(list(precision = 1.5, audience = seq_along(x$beta))))
     x$cost <- x$cost + 0.1

@@ -35,7 +35,7 @@ import Dates, Libdl, Logging, Random
 using Printf: @sprintf
 
 export study, beliefs, share_payoff, equilibrium, turnout, simulate, sensitivity, counterfactual
-export scenario, add_links, cut_links, thin_links, gathering, shift_cost, set_beliefs, forward_reports
+export scenario, add_links, cut_links, thin_links, rewire_links, gathering, shift_cost, shift_benefit, set_beliefs, forward_reports
 export columns, provenance, cutoff_picture, FolkmoteError
 export split_draws, run_chunk, run_chunks, merge_chunks
 

@@ -13,6 +13,11 @@ struct ThinLinks <: Edit
     seed::Int64
 end
 
+struct RewireLinks <: Edit
+    share::Float64
+    seed::Int64
+end
+
 struct Broadcast <: Edit
     audience::Any
     precision::Float64
@@ -23,6 +28,11 @@ struct Gathering <: Edit
 end
 
 struct ShiftCost <: Edit
+    by::Float64
+    audience::Any
+end
+
+struct ShiftBenefit <: Edit
     by::Float64
     audience::Any
 end
@@ -76,6 +86,21 @@ scenario(st, thin_links(0.2; seed = 7))
 thin_links(share; seed = nothing) = ThinLinks(one_number(share, "share"), the_seed(seed))
 
 """
+    rewire_links(share; seed = nothing)
+
+Edit for [`scenario`](@ref): rewire a random `share` (0..1) of the contacts of each community, the nearest whole number of
+them. Each exchanges partners with another contact of its kind (heard in both directions, or in one), so that everybody
+hears as many, and is heard by as many, as before; each link keeps its listener and relay precision. Where no exchange is
+found without a double contact, the contact stays as it is. The seed is taken as in [`thin_links`](@ref).
+
+# Example
+```julia
+scenario(st, rewire_links(0.5; seed = 7))
+```
+"""
+rewire_links(share; seed = nothing) = RewireLinks(one_number(share, "share"), the_seed(seed))
+
+"""
     broadcast(; members = :all, precision)
 
 Edit for [`scenario`](@ref): one more broadcast per community (radio, leaflet, announcement), heard alike by its audience, with
@@ -112,6 +137,19 @@ scenario(st, shift_cost(-0.1))
 ```
 """
 shift_cost(by; members = :all) = ShiftCost(one_number(by, "by"), audience(members))
+
+"""
+    shift_benefit(by; members = :all)
+
+Edit for [`scenario`](@ref): add `by` (finite) to the benefit. `members` as in `broadcast`. A benefit that ends below 0 is an
+error when the scenario is solved.
+
+# Example
+```julia
+scenario(st, shift_benefit(0.1))
+```
+"""
+shift_benefit(by; members = :all) = ShiftBenefit(one_number(by, "by"), audience(members))
 
 """
     set_beliefs(; prior_mean, prior_precision, signal_precision, relay_precision, stake_sd)
@@ -166,6 +204,9 @@ end
 apply(edit::ThinLinks, scenario, st) =
     check(message -> Raw.folkmote_scenario_thin_links(scenario, edit.share, edit.seed, message))
 
+apply(edit::RewireLinks, scenario, st) =
+    check(message -> Raw.folkmote_scenario_rewire_links(scenario, edit.share, edit.seed, message))
+
 function apply(edit::Broadcast, scenario, st)
     with_table(edit.audience, :audience) do table
         check(message -> Raw.folkmote_scenario_broadcast(scenario, table, edit.precision, message))
@@ -181,6 +222,12 @@ end
 function apply(edit::ShiftCost, scenario, st)
     with_table(edit.audience, :audience) do table
         check(message -> Raw.folkmote_scenario_shift_cost(scenario, table, edit.by, message))
+    end
+end
+
+function apply(edit::ShiftBenefit, scenario, st)
+    with_table(edit.audience, :audience) do table
+        check(message -> Raw.folkmote_scenario_shift_benefit(scenario, table, edit.by, message))
     end
 end
 
@@ -202,9 +249,11 @@ whom(table) = "some members"
 
 in_words(edit::EditLinks) = (edit.adds ? "add" : "cut") * (is_all(edit.links) ? " all links" : " links")
 in_words(edit::ThinLinks) = "lose a share $(edit.share) of contacts (seed $(edit.seed))"
+in_words(edit::RewireLinks) = "rewire a share $(edit.share) of contacts (seed $(edit.seed))"
 in_words(edit::Broadcast) = "broadcast to $(whom(edit.audience)), precision $(edit.precision)"
 in_words(edit::Gathering) = "gathering of $(whom(edit.audience))"
 in_words(edit::ShiftCost) = "shift the cost of $(whom(edit.audience)) by $(edit.by)"
+in_words(edit::ShiftBenefit) = "shift the benefit of $(whom(edit.audience)) by $(edit.by)"
 in_words(edit::SetBeliefs) = "set " * join(sort(collect(keys(edit.values))), ", ")
 in_words(edit::ForwardReports) = "forward reports up to $(edit.hops) links"
 

@@ -182,11 +182,15 @@ const FOLKMOTE_BROADCAST_PRECISION = 24
                                       mutual::Cint, message::Message)::Status
 @exported folkmote_scenario_thin_links(scenario::Ptr{folkmote_scenario}, share::Float64, seed::UInt64,
                                        message::Message)::Status
+@exported folkmote_scenario_rewire_links(scenario::Ptr{folkmote_scenario}, share::Float64, seed::UInt64,
+                                       message::Message)::Status
 @exported folkmote_scenario_broadcast(scenario::Ptr{folkmote_scenario}, audience::Ptr{folkmote_table},
                                       precision::Float64, message::Message)::Status
 @exported folkmote_scenario_gathering(scenario::Ptr{folkmote_scenario}, audience::Ptr{folkmote_table},
                                       message::Message)::Status
 @exported folkmote_scenario_shift_cost(scenario::Ptr{folkmote_scenario}, audience::Ptr{folkmote_table},
+                                       by::Float64, message::Message)::Status
+@exported folkmote_scenario_shift_benefit(scenario::Ptr{folkmote_scenario}, audience::Ptr{folkmote_table},
                                        by::Float64, message::Message)::Status
 @exported folkmote_scenario_set_beliefs(scenario::Ptr{folkmote_scenario}, parameter::Cint, count::Int64,
                                         values::Ptr{Float64}, message::Message)::Status

@@ -9,8 +9,8 @@ end
     scenario(study, edits...)
 
 A study with edits that remembers its baseline. The edits are applied in order, each checked against the study as those before
-it left it: [`add_links`](@ref), [`cut_links`](@ref), [`thin_links`](@ref), `broadcast`, [`gathering`](@ref),
-[`shift_cost`](@ref), [`set_beliefs`](@ref), [`forward_reports`](@ref). A scenario in place of the study goes on from there.
+it left it: [`add_links`](@ref), [`cut_links`](@ref), [`thin_links`](@ref), [`rewire_links`](@ref), `broadcast`, [`gathering`](@ref),
+[`shift_cost`](@ref), [`shift_benefit`](@ref), [`set_beliefs`](@ref), [`forward_reports`](@ref). A scenario in place of the study goes on from there.
 
 `equilibrium(sc, beliefs, payoff)` solves it, with what [`set_beliefs`](@ref) set in place of `beliefs`; [`counterfactual`](@ref)
 compares it with its baseline; `study(sc)` is the edited study alone, without what `set_beliefs` set.

@@ -18,6 +18,13 @@ thin_links <- function(share, seed = NULL) {
   new_edit("thin_links", share = share, seed = seed, text = text)
 }
 
+rewire_links <- function(share, seed = NULL) {
+  share <- one_number(share, "share", "one number from 0 to 1", 0, 1)
+  seed <- resolve_seed(seed)
+  text <- paste0("rewire ", format(100 * share), " % of the contacts (seed ", plain_number(seed), ")")
+  new_edit("rewire_links", share = share, seed = seed, text = text)
+}
+
 broadcast <- function(members = "all", precision) {
   if (missing(precision)) stop_argument("precision", "one positive, finite number", NULL)
   precision <- one_number(precision, "precision", "one positive, finite number", low = 0, low_open = TRUE)
@@ -36,6 +43,13 @@ shift_cost <- function(by, members = "all") {
   audience <- as_audience(members)
   text <- paste0("shift the cost by ", format(by), " for ", audience_text(audience))
   new_edit("shift_cost", audience = audience, by = by, text = text)
+}
+
+shift_benefit <- function(by, members = "all") {
+  by <- one_number(by, "by")
+  audience <- as_audience(members)
+  text <- paste0("shift the benefit by ", format(by), " for ", audience_text(audience))
+  new_edit("shift_benefit", audience = audience, by = by, text = text)
 }
 
 set_beliefs <- function(...) {
@@ -98,9 +112,11 @@ apply_edit <- function(handle, edit, study) {
     add_links = with_links(raw_scenario_add_links),
     cut_links = with_links(raw_scenario_cut_links),
     thin_links = raw_scenario_thin_links(handle, edit$share, edit$seed),
+    rewire_links = raw_scenario_rewire_links(handle, edit$share, edit$seed),
     broadcast = with_audience(function(table) raw_scenario_broadcast(handle, table, edit$precision)),
     gathering = with_audience(function(table) raw_scenario_gathering(handle, table)),
     shift_cost = with_audience(function(table) raw_scenario_shift_cost(handle, table, edit$by)),
+    shift_benefit = with_audience(function(table) raw_scenario_shift_benefit(handle, table, edit$by)),
     set_beliefs = for (name in names(edit$values)) {
       values <- in_study_order(edit$values[[name]], name, study)
       raw_scenario_set_beliefs(handle, parameter_code[[name]], values)

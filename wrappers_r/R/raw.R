@@ -77,6 +77,14 @@ raw_scenario_broadcast <- function(scenario, audience, precision) {
   checked(.Call(C_scenario_broadcast, scenario, audience, as.double(precision)))
 }
 raw_scenario_gathering <- function(scenario, audience) checked(.Call(C_scenario_gathering, scenario, audience))
+raw_scenario_rewire_links <- function(scenario, share, seed) {
+  checked(.Call(C_scenario_rewire_links, scenario, as.double(share), as.double(seed)))
+}
+
+raw_scenario_shift_benefit <- function(scenario, audience, by) {
+  checked(.Call(C_scenario_shift_benefit, scenario, audience, as.double(by)))
+}
+
 raw_scenario_shift_cost <- function(scenario, audience, by) {
   checked(.Call(C_scenario_shift_cost, scenario, audience, as.double(by)))
 }

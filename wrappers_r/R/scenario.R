@@ -6,7 +6,7 @@ scenario <- function(study, ...) {
   fault <- which(!vapply(edits, inherits, NA, what = "folkmote_edit"))
   if (length(fault) > 0L) {
     wanted <- paste(
-      "an edit: add_links(), cut_links(), thin_links(), broadcast(), gathering(), shift_cost(), set_beliefs()",
+      "an edit: add_links(), cut_links(), thin_links(), rewire_links(), broadcast(), gathering(), shift_cost(), ...",
       "or forward_reports()"
     )
     stop_argument(paste0("..", fault[1L]), wanted, edits[[fault[1L]]])

@@ -16,6 +16,10 @@ SEXP fm_scenario_thin_links(SEXP scenario, SEXP share, SEXP seed){
     FM_DOES(folkmote_scenario_thin_links(edited(scenario), fm_number(share, "share"), (uint64_t)fm_number(seed, "seed"),
                                          message))}
 
+SEXP fm_scenario_rewire_links(SEXP scenario, SEXP share, SEXP seed){
+    FM_DOES(folkmote_scenario_rewire_links(edited(scenario), fm_number(share, "share"),
+                                           (uint64_t)fm_number(seed, "seed"), message))}
+
 SEXP fm_scenario_broadcast(SEXP scenario, SEXP audience, SEXP precision){
     FM_DOES(folkmote_scenario_broadcast(edited(scenario), table_or_null(audience), fm_number(precision, "precision"),
                                         message))}
@@ -25,6 +29,9 @@ SEXP fm_scenario_gathering(SEXP scenario, SEXP audience){
 
 SEXP fm_scenario_shift_cost(SEXP scenario, SEXP audience, SEXP by){
     FM_DOES(folkmote_scenario_shift_cost(edited(scenario), table_or_null(audience), fm_number(by, "by"), message))}
+
+SEXP fm_scenario_shift_benefit(SEXP scenario, SEXP audience, SEXP by){
+    FM_DOES(folkmote_scenario_shift_benefit(edited(scenario), table_or_null(audience), fm_number(by, "by"), message))}
 
 SEXP fm_scenario_set_beliefs(SEXP scenario, SEXP parameter, SEXP values) {
   int64_t count;
