@@ -302,9 +302,9 @@ FOLKMOTE_API folkmote_status folkmote_options_set(folkmote_options* options, int
 /* Progress and cancel. The callback runs on the thread that called the library, about ten times a second and
  * at the end, with `done` of `total` units of work and the caller's `user`. Non-zero cancels: the call
  * returns FOLKMOTE_CANCELLED and makes nothing. It must return normally: no exception, no long jump.
- *   done, total  0 <= done <= total. A unit is a community; a call of several stages counts each of them from 0.
- *   user         as given to folkmote_options_progress
- * It must not destroy the options, nor start a run with them. It is not called again once it has cancelled. */
+ *   done, total  0 <= done <= total. A unit is a community, or a piece of its plays; a call of several stages counts
+ * each of them from 0. user         as given to folkmote_options_progress It must not destroy the options, nor start a
+ * run with them. It is not called again once it has cancelled. */
 typedef int (*folkmote_progress)(int64_t done, int64_t total, void* user);
 
 /* Set or replace the callback.

@@ -27,7 +27,7 @@ double share_given(const Knowledge& knowledge, std::span<const double> weights, 
 }  // namespace
 
 Control::Control(const Knowledge& knowledge, const ObstacleLaw& law, std::span<const double> weights,
-                 std::span<const double> cutoffs)
+                 std::span<const double> cutoffs, const StopFlag& stop)
     : law_(law) {
   if (law.point()) return;
   low_ = std::max(law.low(), -reach);
@@ -38,7 +38,7 @@ Control::Control(const Knowledge& knowledge, const ObstacleLaw& law, std::span<c
   }
   step_ = (high - low_) / pieces;
   for (int k = 0; k <= pieces; ++k) {
-    value_.push_back(share_given(knowledge, weights, cutoffs, law.at(low_ + step_ * k)));
+    value_.push_back(stop.raised() ? 0.0 : share_given(knowledge, weights, cutoffs, law.at(low_ + step_ * k)));
   }
   // E[c + s (Z - a); a < Z < b] = (c - s a) P(a < Z < b) + s (phi(a) - phi(b)).
   double sum = value_.front() * chance_between(law.low(), low_) + value_.back() * chance_between(high, law.high());

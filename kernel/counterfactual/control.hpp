@@ -6,6 +6,7 @@
 #include <span>
 #include <vector>
 
+#include "parallel/workers.hpp"
 #include "turnout/condition.hpp"
 
 namespace folkmote {
@@ -15,9 +16,10 @@ namespace folkmote {
 /// curve has missed.
 class Control {
  public:
-  /// theta known: the curve is its own mean, and there is nothing to take off.
+  /// Leaves the curve unfinished once the work is stopped. theta known: the curve is its own mean, and there is nothing
+  /// to take off.
   Control(const Knowledge& knowledge, const ObstacleLaw& law, std::span<const double> weights,
-          std::span<const double> cutoffs);
+          std::span<const double> cutoffs, const StopFlag& stop);
 
   double curve(double theta) const;
   double mean() const { return mean_; }

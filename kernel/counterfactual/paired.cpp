@@ -15,23 +15,26 @@ std::span<const double> cutoffs_of(const Enclosure& ends, int end) { return end 
 
 }  // namespace
 
-PairedCommunity::Side::Side(const Solution& solution, int c, const PairedRun& run)
+PairedCommunity::Side::Side(const Solution& solution, int c, const PairedRun& run, const StopFlag& stop)
     : knowledge(make_knowledge(*solution.study, solution.beliefs, c)),
       ends(solution.enclosures[c]),
       law(knowledge, run.condition) {
   const std::vector<double>& weights = run.baseline.study->communities[c].values.weight;
   for (int end : {0, 1}) {
-    expected[end] = expected_turnout(knowledge, law, weights, cutoffs_of(ends, end));
-    if (run.estimator.control && !law.point()) control.emplace_back(knowledge, law, weights, cutoffs_of(ends, end));
+    if (stop.raised()) return;
+    if (run.expectations) expected[end] = expected_turnout(knowledge, law, weights, cutoffs_of(ends, end));
+    if (run.estimator.control && !law.point()) {
+      control.emplace_back(knowledge, law, weights, cutoffs_of(ends, end), stop);
+    }
   }
 }
 
-PairedCommunity::PairedCommunity(const PairedRun& run, int c)
+PairedCommunity::PairedCommunity(const PairedRun& run, int c, const StopFlag& stop)
     : community(static_cast<std::uint64_t>(c)),
       weights(run.baseline.study->communities[c].values.weight),
       total(ordered_sum(weights)),
-      baseline(run.baseline, c, run),
-      scenario(run.scenario, c, run) {}
+      baseline(run.baseline, c, run, stop),
+      scenario(run.scenario, c, run, stop) {}
 
 PairedPlayer::PairedPlayer(const PairedRun& run, const PairedCommunity& played)
     : run_(run),

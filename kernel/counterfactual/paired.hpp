@@ -26,21 +26,23 @@ struct PairedRun {
   Condition condition;
   Estimator estimator;
   std::uint64_t seed;
+  bool expectations = true;  // without them `expected` stays 0
 };
 
 /// What the plays of one community have in common.
 struct PairedCommunity {
   struct Side {
-    Side(const Solution& solution, int community, const PairedRun& run);
+    Side(const Solution& solution, int community, const PairedRun& run, const StopFlag& stop);
 
     Knowledge knowledge;
     const Enclosure& ends;
     ObstacleLaw law;
-    double expected[2];  // E[A] at the least and the greatest end
+    double expected[2] = {0.0, 0.0};  // E[A] at the least and the greatest end
     std::vector<Control> control;
   };
 
-  PairedCommunity(const PairedRun& run, int community);
+  /// What is made after the work is stopped is of no use.
+  PairedCommunity(const PairedRun& run, int community, const StopFlag& stop);
 
   std::uint64_t community;
   const std::vector<double>& weights;

@@ -18,7 +18,7 @@ Table paired_table(const Solution& baseline, const Scenario& scenario, const Pla
   const Solution after = solve_scenario(baseline, scenario, execution);
   Estimator actions = estimator;  // the plays as they are: nothing is estimated
   actions.over_stakes = actions.control = false;
-  const PairedRun run{baseline, after, range.condition, actions, range.seed};
+  const PairedRun run{baseline, after, range.condition, actions, range.seed, false};
   const auto communities = static_cast<std::int64_t>(baseline.study->communities.size());
   const std::size_t rows = communities * range.count;
   std::vector<std::int64_t> community(rows), replication(rows);
@@ -32,7 +32,7 @@ Table paired_table(const Solution& baseline, const Scenario& scenario, const Pla
   }
   run_tasks(static_cast<std::int64_t>(pieces.size()), execution, [&](std::int64_t task, const StopFlag& stop) {
     const PlayPiece& piece = pieces[task];
-    const PairedCommunity played(run, static_cast<int>(piece.community));
+    const PairedCommunity played(run, static_cast<int>(piece.community), stop);
     PairedPlayer player(run, played);
     play_by_lanes(piece, stop, [&](std::int64_t first, int count) {
       player.play(range.first + first);

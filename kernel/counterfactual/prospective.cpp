@@ -106,8 +106,8 @@ class Comparison {
   /// The communities first .. first + size - 1: the analytic part into `rows`, then the plays.
   std::vector<Plays> compare(std::int64_t first, std::int64_t size, Row* rows, const Execution& execution) const {
     std::vector<std::unique_ptr<PairedCommunity>> played(size);
-    run_tasks(size, execution, [&](std::int64_t k, const StopFlag&) {
-      played[k] = std::make_unique<PairedCommunity>(run_, static_cast<int>(first + k));
+    run_tasks(size, execution, [&](std::int64_t k, const StopFlag& stop) {
+      played[k] = std::make_unique<PairedCommunity>(run_, static_cast<int>(first + k), stop);
       rows[k] = analytic(*played[k]);
     });
     std::vector<Plays> plays(draws_ > 0 ? size : 0, Plays(draws_));

@@ -62,10 +62,11 @@ double chance_at_least_given(const Knowledge& knowledge, const SharedInformation
 }
 
 double chance_at_least(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights,
-                       std::span<const double> cutoffs, double threshold) {
+                       std::span<const double> cutoffs, double threshold, const StopFlag* stop) {
   if (threshold <= 0.0) return 1.0;
   const double scale = 1.0 / std::sqrt(knowledge.prior_precision);
   const auto integrand = [&](double z) {
+    if (stop != nullptr && stop->raised()) return 0.0;
     return normal_density(z) *
            chance_at_least_given(knowledge, shared, weights, cutoffs, threshold, knowledge.prior_mean + scale * z);
   };

@@ -5,6 +5,7 @@
 #include <span>
 
 #include "information/shared.hpp"
+#include "parallel/workers.hpp"
 
 namespace folkmote {
 
@@ -20,8 +21,9 @@ double chance_at_least_given(const Knowledge& knowledge, const SharedInformation
                              std::span<const double> weights, std::span<const double> cutoffs, double threshold,
                              double obstacle);
 
-/// P(A >= q), integrated over the prior of theta by adaptive Gauss-Legendre panels to about 1e-9.
+/// P(A >= q), integrated over the prior of theta by adaptive Gauss-Legendre panels to about 1e-9; of no use once
+/// `stop` is raised.
 double chance_at_least(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights,
-                       std::span<const double> cutoffs, double threshold);
+                       std::span<const double> cutoffs, double threshold, const StopFlag* stop = nullptr);
 
 }  // namespace folkmote

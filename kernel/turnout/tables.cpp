@@ -110,14 +110,16 @@ struct Answers {
   bool exact;
 };
 
-Answers dense_answers(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights) {
-  return {[&, weights](std::span<const double> cutoffs, const Given& condition) {
+Answers dense_answers(const Knowledge& knowledge, const SharedInformation& shared, std::span<const double> weights,
+                      const StopFlag& stop) {
+  return {[&, weights](std::span<const double> cutoffs, const Given& condition) -> Moments {
+            if (stop.raised()) return Moments{};
             return condition ? turnout_given(knowledge, shared, weights, cutoffs, *condition)
                              : turnout_moments(knowledge, shared, weights, cutoffs);
           },
           [&, weights](std::span<const double> cutoffs, double threshold, const Given& condition) {
             return condition ? chance_at_least_given(knowledge, shared, weights, cutoffs, threshold, *condition)
-                             : chance_at_least(knowledge, shared, weights, cutoffs, threshold);
+                             : chance_at_least(knowledge, shared, weights, cutoffs, threshold, &stop);
           },
           chance_is_exact(shared, weights)};
 }
@@ -167,11 +169,11 @@ Table turnout_table(const Solution& solution, std::span<const double> given, std
   const auto fill = [&](std::int64_t c, const Answers& answers) {
     fill_rows(answers, solution.enclosures[c], conditions, at_least, static_cast<std::size_t>(c) * each, rows);
   };
-  run_tasks(static_cast<std::int64_t>(communities), execution, [&](std::int64_t c, const StopFlag&) {
+  run_tasks(static_cast<std::int64_t>(communities), execution, [&](std::int64_t c, const StopFlag& stop) {
     if (is_large_for_turnout(study.communities[c].size)) return;
     const Knowledge knowledge = make_knowledge(study, solution.beliefs, static_cast<int>(c));
     const SharedInformation shared(knowledge);
-    fill(c, dense_answers(knowledge, shared, study.communities[c].values.weight));
+    fill(c, dense_answers(knowledge, shared, study.communities[c].values.weight, stop));
   });
   // Large communities one after the other, each split over the workers.
   for (std::size_t c = 0; c < communities; ++c) {

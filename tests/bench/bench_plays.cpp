@@ -56,7 +56,7 @@ struct Estimate {
 Estimate estimate(const Solution& before, const Solution& after, const Estimator& estimator, std::int64_t draws) {
   const bench::Clock clock;
   const PairedRun run{before, after, {}, estimator, 7};
-  const PairedCommunity played(run, 0);
+  const PairedCommunity played(run, 0, StopFlag());
   PairedPlayer player(run, played);
   double sum = 0.0, squares = 0.0;
   for (std::int64_t r = 0; r < draws; r += lanes) {

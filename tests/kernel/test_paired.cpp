@@ -95,7 +95,7 @@ TEST_CASE("the control variate has the mean that it says", "[counterfactual]") {
   const std::vector<double> weights(30, 1.0), cutoffs(30, 0.55);
   for (const Condition& condition : {Condition{}, Condition{0.1, 0.6}, Condition{2.0, open_end}, Condition{5.0, 5.2}}) {
     const ObstacleLaw law(k, condition);
-    const Control control(k, law, weights, cutoffs);
+    const Control control(k, law, weights, cutoffs, StopFlag());
     double sum = 0.0;  // over 200,000 equal shares of the law: the midpoint rule
     constexpr int shares = 200000;
     for (int s = 0; s < shares; ++s) sum += control.curve(law.obstacle((s + 0.5) / shares));

@@ -39,7 +39,9 @@ raw_payoff_set <- function(payoff, parameter, values) checked(.Call(C_payoff_set
 
 raw_options_create <- function() checked(.Call(C_options_create))
 raw_options_set <- function(options, option, value) checked(.Call(C_options_set, options, option, as.double(value)))
-raw_options_progress <- function(options, show) checked(.Call(C_options_progress, options, as.integer(show)))
+raw_options_progress <- function(options, show, tick) {
+  checked(.Call(C_options_progress, options, as.integer(show), tick))
+}
 raw_options_finish <- function(options) .Call(C_options_finish, options)
 
 raw_equilibrium_create <- function(study, beliefs, payoff, options) {

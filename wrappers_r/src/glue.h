@@ -6,6 +6,7 @@
 #define R_NO_REMAP
 #include <R.h>
 #include <Rinternals.h>
+#include <setjmp.h>
 #include <time.h>
 
 #include "folkmote.h"
@@ -61,6 +62,8 @@ typedef struct fm_options {
   int percent, seconds; /* as last written */
   time_t started;
   int64_t done, total;
+  SEXP tick;    /* function(done, total) of R, or NULL; kept alive by the handle */
+  jmp_buf home; /* where a jump out of `tick` is caught */
 } fm_options;
 
 void fm_options_finalise(SEXP handle);

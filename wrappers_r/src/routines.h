@@ -27,7 +27,7 @@ SEXP fm_table_digest(SEXP table);
 
 SEXP fm_options_create(void);
 SEXP fm_options_set(SEXP options, SEXP option, SEXP value);
-SEXP fm_options_progress(SEXP options, SEXP show);
+SEXP fm_options_progress(SEXP options, SEXP show, SEXP tick);
 SEXP fm_options_finish(SEXP options);
 
 SEXP fm_study_create(SEXP members, SEXP links, SEXP broadcasts, SEXP gatherings, SEXP communities, SEXP mutual);
